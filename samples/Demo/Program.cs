@@ -1,2 +1,3 @@
-var app = WebApplication.CreateBuilder(args).Build();
-app.Run();
+using CouplingWatch.Server;
+
+return await WatchServer.RunAsync(args);
