@@ -61,8 +61,8 @@ public sealed class RunMonitor
 }
 
 /// <summary>Something a page or an outside client wants to hear of.</summary>
-/// <param name="Kind">iteration, step, verdict, alert, advice, settings, close.</param>
+/// <param name="Kind">iteration, step, verdict, alert, advice, settings, close, race.</param>
 /// <param name="Subject">The id concerned (an alert's, a revision's number); empty where the run itself is.</param>
 public readonly record struct Change(ChangeKind Kind, string Subject = "");
 
-public enum ChangeKind { Iteration, Step, Verdict, Alert, Advice, Settings, Close }
+public enum ChangeKind { Iteration, Step, Verdict, Alert, Advice, Settings, Close, Race }

@@ -15,6 +15,8 @@ public sealed record RunDetail
     public AdjustableSettings Adjustable { get; init; } = new();
     public IReadOnlyList<SettingsRevision> Revisions { get; init; } = [];
     public IReadOnlyList<Advice> Advice { get; init; } = [];
+    /// <summary>The race that runs, or the latest one; null when there was none.</summary>
+    public RaceView? Race { get; init; }
     public IReadOnlyList<SolverDeclaration> Solvers { get; init; } = [];
     public IReadOnlyList<FieldDeclaration> Fields { get; init; } = [];
     public double? Time { get; init; }
