@@ -29,4 +29,8 @@ public sealed record JournalEntry(long Order, JournalEntryKind Kind, long Seq, D
 
 public sealed record JournaledRun(string Run, string? Instance, long NextSeq, long NextOrder);
 
-public sealed class JournalUnavailableException(string message, Exception? inner = null) : Exception(message, inner);
+public sealed class JournalUnavailableException(string message, Exception? inner = null) : Exception(message, inner)
+{
+    /// <summary>True when the medium is full, so that trying again soon is of no use.</summary>
+    public bool NoRoom { get; init; }
+}
