@@ -18,6 +18,7 @@ public static class WatchServer
         var builder = WebApplication.CreateBuilder(SitePlace.Options(args));
         builder.WebHost.UseStaticWebAssets();
         builder.Services.AddRazorComponents().AddInteractiveServerComponents();
+        builder.Services.AddWatchComponents();
         build?.Invoke(builder);
 
         var app = builder.Build();
