@@ -1,63 +1,100 @@
+using CouplingWatch.Monitoring.Alerts;
+using CouplingWatch.Monitoring.Checks;
+using CouplingWatch.Monitoring.State;
 using CouplingWatch.Records;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring;
 
 /// <summary>Judges one run: records in, findings out. Pure and deterministic; not safe for concurrent use.</summary>
-public sealed class RunMonitor
+public sealed partial class RunMonitor
 {
+    private readonly RunState state;
+    private readonly SettingsBook settings = new();
+    private readonly AlertBook alerts;
+    private readonly ICheck[] checks;
+    private readonly IRunListener[] listeners;
+    private readonly List<Finding> findings = [];
+    private readonly List<Change> changes = [];
+
+    /// <param name="run">Name of the run; part of the alerts' ids.</param>
+    /// <param name="options">Thresholds; the defaults when null.</param>
+    /// <exception cref="ArgumentException">An option lies outside its range.</exception>
     public RunMonitor(string run, MonitorOptions? options = null)
     {
+        ArgumentNullException.ThrowIfNull(run);
         Run = run;
         Options = options ?? new MonitorOptions();
+        Options.Validate();
+        state = new RunState(run);
+        alerts = new AlertBook(run);
+        checks = CheckList.All(Options);
+        listeners = [];
     }
 
     public string Run { get; }
 
     public MonitorOptions Options { get; }
 
-    /// <summary>Handles the next record. The returned list is reused by the next call.</summary>
-    /// <param name="received">When the server received it; used where the record carries no time.</param>
-    public IReadOnlyList<Change> Observe(StreamRecord record, DateTimeOffset received) => throw new NotImplementedException();
+    internal RunState State => state;
 
-    /// <summary>Handles what the server saw by its clock or what a person did.</summary>
-    public IReadOnlyList<Change> Observe(ServerEvent serverEvent) => throw new NotImplementedException();
+    internal AlertBook AlertBook => alerts;
 
-    /// <summary>The recording ends here: silence may be judged.</summary>
-    public IReadOnlyList<Change> EndOfRecording() => throw new NotImplementedException();
+    internal SettingsBook SettingsBook => settings;
+
+    internal IReadOnlyList<ICheck> Checks => checks;
 
     /// <summary>Seconds without a record after which this run counts as silent; null while fewer than five gaps are known.</summary>
-    public double? SilenceLimitSeconds => throw new NotImplementedException();
+    public double? SilenceLimitSeconds => state.Cadence.LimitSeconds;
+
+    /// <summary>Seconds without a beat after which this run counts as silent; null when it declared no beats.</summary>
+    public double? BeatLimitSeconds => state.Open?.BeatSeconds is { } beat && beat > 0 ? 3 * beat : null;
+
+    /// <summary>Seconds inside <paramref name="solver"/> after which it counts as hanging.</summary>
+    public double HangLimitSeconds(string solver) => state.Times.HangLimit(solver);
 
     public RunSummary Summary(DateTimeOffset now) => throw new NotImplementedException();
 
     public RunDetail Detail(DateTimeOffset now) => throw new NotImplementedException();
 
-    public BasisView? Basis(int? step = null, int? iteration = null, FilterRule? rule = null, double? threshold = null) => throw new NotImplementedException();
+    public BasisView? Basis(int? step = null, int? iteration = null, FilterRule? rule = null, double? threshold = null) => null;
 
-    public SpectrumView? Spectrum() => throw new NotImplementedException();
+    public SpectrumView? Spectrum() => null;
 
     /// <summary>Per-step summaries of [from, to], thinned to at most <paramref name="points"/> groups without losing extremes.</summary>
     public IReadOnlyList<StripBar> Steps(int? from, int? to, int points) => throw new NotImplementedException();
 
+    /// <summary>The iterations of a step with what was known as each arrived; empty when they are no longer kept.</summary>
     public IReadOnlyList<IterationView> Iterations(int step) => throw new NotImplementedException();
 
     /// <summary>All alerts, open and closed, in order of seq.</summary>
-    public IReadOnlyList<Alert> Alerts => throw new NotImplementedException();
+    public IReadOnlyList<Alert> Alerts => alerts.All;
 
-    public IReadOnlyList<Advice> Advice => throw new NotImplementedException();
+    /// <summary>The advice that stands now.</summary>
+    public IReadOnlyList<Advice> Advice => [];
 
-    public IReadOnlyList<NotJudged> NotJudged => throw new NotImplementedException();
+    /// <summary>The checks that cannot judge with what this run sends, in the order of the list of checks.</summary>
+    public IReadOnlyList<NotJudged> NotJudged
+    {
+        get
+        {
+            List<NotJudged> lacking = [];
+            foreach (var check in checks)
+                if (check.Lacks(state) is { } lack) lacking.Add(lack);
+            return lacking;
+        }
+    }
 
-    public Verdict Verdict => throw new NotImplementedException();
+    public Verdict Verdict => Views.VerdictWriter.Write(this);
 
-    public IReadOnlyList<SettingsRevision> Revisions => throw new NotImplementedException();
+    public IReadOnlyList<SettingsRevision> Revisions => settings.All;
 
-    public OpenRecord? Open => throw new NotImplementedException();
+    public OpenRecord? Open => state.Open;
 
-    public int StepCount => throw new NotImplementedException();
+    /// <summary>Steps with a verdict, rejected attempts apart.</summary>
+    public int StepCount => state.StepsComplete;
 
-    public long IterationCount => throw new NotImplementedException();
+    public long IterationCount => state.Iterations;
 }
 
 /// <summary>Something a page or an outside client wants to hear of.</summary>

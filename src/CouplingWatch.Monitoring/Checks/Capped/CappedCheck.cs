@@ -1,0 +1,41 @@
+using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.State;
+using CouplingWatch.Monitoring.Wording;
+using CouplingWatch.Records;
+using CouplingWatch.Wire;
+
+namespace CouplingWatch.Monitoring.Checks.Capped;
+
+/// <summary>A step went on without convergence; and a run whose last two steps did. Level 0.</summary>
+internal sealed class CappedCheck : ICheck
+{
+    public string Id => CheckIds.Capped;
+
+    public void StepClosed(RunState run, in ClosedStep step, List<Finding> findings)
+    {
+        if (step.Outcome == StepOutcome.Capped) findings.Add(Capped(step));
+        if (step.Unconverged && run.UnconvergedInARow >= 2) findings.Add(Unconverged(run, step));
+    }
+
+    private static Finding Capped(in ClosedStep step)
+    {
+        var evidence = new JsonObject { ["iterations"] = step.Iterations };
+        var text = $"Step {step.Step} went on without convergence after {Say.Count(step.Iterations, "iteration", "iterations")}";
+        if (step.LastNeed is { } need)
+        {
+            evidence["timesAboveTarget"] = Math.Pow(10, need);
+            text += need > 0
+                ? $", its residual {Say.Number(Math.Pow(10, need))} times above the target"
+                : $", although its residual is {Say.Number(Math.Pow(10, -need))} times below the declared target";
+        }
+        return new Finding(CheckIds.Capped, Severity.Warning, text + ".", evidence);
+    }
+
+    private static Finding Unconverged(RunState run, in ClosedStep step)
+    {
+        var evidence = new JsonObject { ["stepsInARow"] = run.UnconvergedInARow, ["unconvergedSteps"] = run.StepsCapped + run.StepsFailed, ["steps"] = run.StepsComplete };
+        return new Finding(CheckIds.UnconvergedRun, Severity.Critical,
+            $"The last {run.UnconvergedInARow} steps went on without convergence ({run.StepsCapped + run.StepsFailed} of {run.StepsComplete} in all): from step {run.UnconvergedSince} on the results are not those of the coupled problem.",
+            evidence);
+    }
+}

@@ -1,0 +1,26 @@
+using CouplingWatch.Monitoring.Checks.Capped;
+using CouplingWatch.Monitoring.Checks.Divergence;
+using CouplingWatch.Monitoring.Checks.Drift;
+using CouplingWatch.Monitoring.Checks.FalseClaim;
+using CouplingWatch.Monitoring.Checks.NoiseFloor;
+using CouplingWatch.Monitoring.Checks.Slow;
+using CouplingWatch.Monitoring.Checks.Stall;
+using CouplingWatch.Monitoring.Checks.UnequalFields;
+
+namespace CouplingWatch.Monitoring.Checks;
+
+/// <summary>Every check, one line each. A new check is a folder and a line here.</summary>
+internal static class CheckList
+{
+    public static ICheck[] All(MonitorOptions options) =>
+    [
+        new DivergenceCheck(options.Divergence),
+        new FalseClaimCheck(options.FalseClaim),
+        new NoiseFloorCheck(options.Progress),
+        new SlowCheck(options.Progress),
+        new StallCheck(options.Progress),
+        new CappedCheck(),
+        new DriftCheck(options.Drift),
+        new UnequalFieldsCheck(options.UnequalFields),
+    ];
+}

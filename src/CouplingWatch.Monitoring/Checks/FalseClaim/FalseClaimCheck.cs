@@ -1,0 +1,43 @@
+using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.State;
+using CouplingWatch.Monitoring.Wording;
+using CouplingWatch.Records;
+using CouplingWatch.Wire;
+
+namespace CouplingWatch.Monitoring.Checks.FalseClaim;
+
+/// <summary>How far above the declared tolerance a step may be called converged.</summary>
+public sealed record FalseClaimOptions
+{
+    public const double DefaultAllowedRatio = 1.05;
+
+    /// <summary>Residual over tolerance; 1…100.</summary>
+    public double AllowedRatio { get; init; } = DefaultAllowedRatio;
+
+    internal void Validate(OptionFaults faults) => faults.Range("FalseClaim.AllowedRatio", AllowedRatio, 1, 100);
+}
+
+/// <summary>The code calls a step converged whose residual lies above the declared tolerance. Level 1, or level 0 with targets.</summary>
+internal sealed class FalseClaimCheck(FalseClaimOptions options) : ICheck
+{
+    public string Id => CheckIds.FalseClaim;
+
+    public void StepClosed(RunState run, in ClosedStep step, List<Finding> findings)
+    {
+        if (!step.Converged || !run.SendsStepRecords || step.LastNeed is not { } need || !(need > Math.Log10(options.AllowedRatio))) return;
+        var governing = run.Fields.Governing;
+        if (governing is null || governing.Inferred) return;
+        var ratio = Math.Pow(10, need);
+        var evidence = new JsonObject { ["field"] = governing.Name, ["ratio"] = ratio, ["residual"] = governing.Residual, ["tolerance"] = governing.Tolerance };
+        findings.Add(new Finding(Id, Severity.Warning,
+            $"Step {step.Step} was called converged with the residual of {governing.Name} at {Say.Number(governing.Residual)}, {Say.Number(ratio)} times the declared tolerance of {Say.Number(governing.Tolerance ?? 0)}.",
+            evidence));
+    }
+
+    public NotJudged? Lacks(RunState run)
+    {
+        foreach (var field in run.Fields.All)
+            if (field.Sent && !field.Inferred && field.Tolerance is not null) return null;
+        return run.Iterations == 0 ? null : new NotJudged(Id, "the tolerance is only inferred from what the code accepted before", "magnitudes with each iteration, or targets");
+    }
+}

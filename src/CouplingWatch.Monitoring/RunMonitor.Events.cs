@@ -1,0 +1,64 @@
+using System.Globalization;
+using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Alerts;
+using CouplingWatch.Monitoring.Checks;
+using CouplingWatch.Monitoring.Checks.Silent;
+using CouplingWatch.Monitoring.Wording;
+using CouplingWatch.Wire;
+
+namespace CouplingWatch.Monitoring;
+
+public sealed partial class RunMonitor
+{
+    /// <summary>Handles what the server saw by its clock or what a person did.</summary>
+    public IReadOnlyList<Change> Observe(ServerEvent serverEvent)
+    {
+        ArgumentNullException.ThrowIfNull(serverEvent);
+        changes.Clear();
+        findings.Clear();
+        AlertEvents.EndShelving(alerts, serverEvent.At, changes);
+        switch (serverEvent)
+        {
+            case SilentEvent e:
+                state.At = e.At;
+                findings.Add(SilentCheck.Late(e.SecondsSilent, e.LimitSeconds));
+                Report();
+                break;
+            case HangEvent e:
+                state.At = e.At;
+                findings.Add(Hanging(e));
+                Report();
+                break;
+            case PublishedEvent e:
+                settings.Published(e);
+                changes.Add(new Change(ChangeKind.Settings, e.Revision.ToString(CultureInfo.InvariantCulture)));
+                break;
+            case PickedUpEvent e:
+                settings.PickedUp(e.Revision);
+                changes.Add(new Change(ChangeKind.Settings, e.Revision.ToString(CultureInfo.InvariantCulture)));
+                break;
+            default:
+                if (AlertEvents.Apply(alerts, serverEvent) is { } alert) changes.Add(new Change(ChangeKind.Alert, alert));
+                break;
+        }
+        return changes;
+    }
+
+    /// <summary>The recording ends here: silence may be judged.</summary>
+    public IReadOnlyList<Change> EndOfRecording()
+    {
+        changes.Clear();
+        findings.Clear();
+        if (state.Ended) return changes;
+        state.Ended = true;
+        if (state.Close is not null || state.NextSeq == 0) return changes;
+        findings.Add(SilentCheck.Ended(state));
+        Report();
+        changes.Add(new Change(ChangeKind.Verdict));
+        return changes;
+    }
+
+    private static Finding Hanging(HangEvent e) => new(CheckIds.Hang, Severity.Critical,
+        $"{e.Solver} has been inside one pass for {Say.Seconds(e.InsideSeconds)}; its passes take {Say.Seconds(e.LimitSeconds)} at most when it is well.",
+        new JsonObject { ["solver"] = e.Solver, ["insideSeconds"] = e.InsideSeconds, ["limitSeconds"] = e.LimitSeconds }, Certain: true);
+}

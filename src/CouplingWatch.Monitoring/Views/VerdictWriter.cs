@@ -1,0 +1,54 @@
+using CouplingWatch.Monitoring.Checks;
+using CouplingWatch.Monitoring.State;
+using CouplingWatch.Monitoring.Wording;
+using CouplingWatch.Records;
+using CouplingWatch.Wire;
+
+namespace CouplingWatch.Monitoring.Views;
+
+/// <summary>The state of a run in one sentence: the first cause among the standing alerts, else how it goes.</summary>
+internal static class VerdictWriter
+{
+    public static Verdict Write(RunMonitor monitor)
+    {
+        var run = monitor.State;
+        Alert? first = null;
+        foreach (var alert in monitor.Alerts)
+            if (alert.ClosedSeq is null && alert.State != AlertState.Shelved && (first is null || CheckIds.Rank(alert.Check) < CheckIds.Rank(first.Check))) first = alert;
+        if (run.Close is { } close) return Closed(close, run, first);
+        if (first is not null) return new Verdict(CodeOf(first.Check), WordOf(first.Check), first.Text, first.Severity, first.Step);
+        if (run.Iterations == 0) return new Verdict("not-judged", "Not judged", "nothing but the opening has come yet");
+        if (run.Learning.Holds && !run.Steady) return new Verdict("learning", "Learning", $"{run.Learning.StepsDone} of {Learning.Steps} steps seen");
+        return new Verdict("on-course", "On course", $"{Say.Count(run.StepsComplete, "step", "steps")} complete, {Say.Number(run.StepsComplete == 0 ? 0 : (double)run.IterationsInSteps / run.StepsComplete)} iterations a step");
+    }
+
+    private static Verdict Closed(CloseRecord close, RunState run, Alert? first)
+    {
+        var steps = Say.Count(run.StepsComplete, "step", "steps");
+        return close.Outcome switch
+        {
+            CloseOutcome.Finished => new Verdict("finished", "Finished", $"{steps}, {run.StepsCapped + run.StepsFailed} without convergence", first?.Severity),
+            CloseOutcome.Diverged => new Verdict("diverged", "Diverged", first?.Text ?? $"closed as diverged after {steps}", Severity.Critical),
+            CloseOutcome.Aborted => new Verdict("aborted", "Aborted", close.Reason ?? $"after {steps}", first?.Severity),
+            _ => new Verdict("stopped", "Stopped", close.Reason ?? $"after {steps}", first?.Severity),
+        };
+    }
+
+    private static string CodeOf(string check) => check switch
+    {
+        CheckIds.Divergence => "diverging",
+        CheckIds.UnconvergedRun or CheckIds.Capped => "gave-up",
+        CheckIds.Silent or CheckIds.Hang => "silent",
+        CheckIds.Drift or CheckIds.UnequalFields => "dearer",
+        _ => "losing-time",
+    };
+
+    private static string WordOf(string check) => CodeOf(check) switch
+    {
+        "diverging" => "Diverging",
+        "gave-up" => "Gave up",
+        "silent" => "Silent",
+        "dearer" => "Dearer",
+        _ => "Losing time",
+    };
+}
