@@ -1,0 +1,59 @@
+namespace LockGate.Water;
+
+/// <summary>
+/// Incomplete Cholesky factor without fill of the five-point matrix of a <see cref="ChamberMesh"/>, as preconditioner.
+/// Source: "An iterative solution method for linear systems of which the coefficient matrix is a symmetric M-matrix",
+/// Mathematics of Computation 31 (1977) 148-162, DOI 10.1090/S0025-5718-1977-0438681-4.
+/// </summary>
+internal sealed class IncompleteCholesky
+{
+    private readonly int along;
+    private readonly double east;
+    private readonly double north;
+    private readonly double[] inversePivot;
+
+    /// <param name="diagonal">Diagonal of the matrix, one entry a cell, above 0.</param>
+    /// <param name="along">Cells of one level.</param>
+    /// <param name="east">Off-diagonal magnitude between neighbours of one level (the entry is −<paramref name="east"/>).</param>
+    /// <param name="north">Off-diagonal magnitude between levels.</param>
+    public IncompleteCholesky(double[] diagonal, int along, double east, double north)
+    {
+        this.along = along;
+        this.east = east;
+        this.north = north;
+        inversePivot = new double[diagonal.Length];
+        for (var c = 0; c < diagonal.Length; c++)
+        {
+            var pivot = diagonal[c];
+            if (c % along > 0) pivot -= east * east * inversePivot[c - 1];
+            if (c >= along) pivot -= north * north * inversePivot[c - along];
+            inversePivot[c] = 1 / pivot;
+        }
+    }
+
+    /// <summary>z = (LDLᵀ)⁻¹ r: forward, then backward substitution. Cost 8 operations a cell.</summary>
+    public void Solve(double[] r, double[] z)
+    {
+        var n = r.Length;
+        for (var row = 0; row < n; row += along)
+        {
+            var left = 0.0;
+            for (var c = row; c < row + along; c++)
+            {
+                var value = r[c] + east * left;
+                if (row > 0) value += north * z[c - along];
+                left = z[c] = value * inversePivot[c];
+            }
+        }
+        for (var row = n - along; row >= 0; row -= along)
+        {
+            var right = 0.0;
+            for (var c = row + along - 1; c >= row; c--)
+            {
+                var carried = east * right;
+                if (row + along < n) carried += north * z[c + along];
+                right = z[c] += carried * inversePivot[c];
+            }
+        }
+    }
+}
