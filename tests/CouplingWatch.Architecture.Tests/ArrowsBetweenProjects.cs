@@ -14,8 +14,9 @@ public class ArrowsBetweenProjects
         ["CouplingWatch.Client"] = ["CouplingWatch.Stream"],
         ["CouplingWatch.Cli"] = ["CouplingWatch.Client", "CouplingWatch.Monitoring", "CouplingWatch.Storage"],
         ["CouplingWatch.Server"] = ["CouplingWatch.Monitoring", "CouplingWatch.Storage", "CouplingWatch.Components"],
-        ["LockGate"] = ["CouplingWatch.Client", "CouplingWatch.Coupling"],
-        ["ColdPlate"] = ["CouplingWatch.Client", "CouplingWatch.Coupling"],
+        ["CoupledRuns"] = ["CouplingWatch.Client", "CouplingWatch.Coupling"],
+        ["LockGate"] = ["CouplingWatch.Client", "CouplingWatch.Coupling", "CoupledRuns"],
+        ["ColdPlate"] = ["CouplingWatch.Client", "CouplingWatch.Coupling", "CoupledRuns"],
         ["Demo"] = ["CouplingWatch.Server", "LockGate", "ColdPlate"],
     };
 
