@@ -77,7 +77,7 @@ public sealed record RaceRound(int Round, IReadOnlyList<int> Order, IReadOnlyLis
 public sealed record RaceBlock(int Arm, double Score, int FromStep, int ToStep);
 
 /// <param name="Arm">Arm in force; null when the settings belong to no arm.</param>
-/// <param name="Use">scored, discarded, or cost (ran under settings that were not, or no longer, in turn).</param>
+/// <param name="Use">scored, discarded, cost (ran under settings that were not, or no longer, in turn), or watched (after the verdict).</param>
 public sealed record RaceStepView(int Step, int? Arm, int Count, bool Converged, string Use, int Round);
 
 /// <param name="Limit">A challenger whose step takes more iterations is out.</param>
