@@ -39,7 +39,8 @@ public sealed record WorstResidual(string Field, int Index, double Value, double
 public sealed record VectorPair(double[] Residual, double[] Output);
 
 /// <summary>Sparse sign sketches of the two vectors; <see cref="Rows"/> a multiple of 8.</summary>
-public sealed record SketchPair(int Rows, long Seed, double[] Residual, double[] Output);
+/// <param name="FullRows">Length of the vectors this sketch was kept instead of; null where the sender made the sketch.</param>
+public sealed record SketchPair(int Rows, long Seed, double[] Residual, double[] Output, int? FullRows = null);
 
 /// <summary>Birth of a secant column: the earlier of the two iterations it was formed from.</summary>
 public readonly record struct ColumnBirth(int Step, int Iteration, int Attempt = 0);
