@@ -2,7 +2,11 @@ using CouplingWatch.Monitoring.Checks;
 using CouplingWatch.Monitoring.Checks.Divergence;
 using CouplingWatch.Monitoring.Checks.Drift;
 using CouplingWatch.Monitoring.Checks.FalseClaim;
+using CouplingWatch.Monitoring.Checks.Oscillation;
+using CouplingWatch.Monitoring.Checks.Polluted;
 using CouplingWatch.Monitoring.Checks.Progress;
+using CouplingWatch.Monitoring.Checks.Stale;
+using CouplingWatch.Monitoring.Checks.Starved;
 using CouplingWatch.Monitoring.Checks.UnequalFields;
 
 namespace CouplingWatch.Monitoring;
@@ -17,6 +21,14 @@ public sealed class MonitorOptions
 
     public FalseClaimOptions FalseClaim { get; init; } = new();
 
+    public OscillationOptions Oscillation { get; init; } = new();
+
+    public PollutedOptions Polluted { get; init; } = new();
+
+    public StaleOptions Stale { get; init; } = new();
+
+    public StarvedOptions Starved { get; init; } = new();
+
     public DriftOptions Drift { get; init; } = new();
 
     public UnequalFieldsOptions UnequalFields { get; init; } = new();
@@ -29,6 +41,10 @@ public sealed class MonitorOptions
         Divergence.Validate(faults);
         Progress.Validate(faults);
         FalseClaim.Validate(faults);
+        Oscillation.Validate(faults);
+        Polluted.Validate(faults);
+        Stale.Validate(faults);
+        Starved.Validate(faults);
         Drift.Validate(faults);
         UnequalFields.Validate(faults);
         faults.ThrowIfAny("options");

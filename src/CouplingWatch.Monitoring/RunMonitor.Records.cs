@@ -65,7 +65,11 @@ public sealed partial class RunMonitor
         state.TimeStep = open.TimeStep;
         state.Fields.Declare(open.Fields);
         settings.Open(open);
-        if (string.Equals(open.Continues?.Basis, "kept", StringComparison.Ordinal)) state.Learning.Skip();
+        if (string.Equals(open.Continues?.Basis, "kept", StringComparison.Ordinal))
+        {
+            state.Learning.Skip();
+            state.Basis.ForeignSteps = Math.Max(1, state.HistorySteps);
+        }
         else if (open.Continues is not null) state.Learning.Restart("restart");
     }
 
@@ -90,6 +94,7 @@ public sealed partial class RunMonitor
         if (settings.Pending is { } pending && (pending.FromStep ?? record.Step) <= record.Step) PutInForce(pending, record.Step);
         state.Step.Begin(record.Step, attempt, record.Seq);
         state.Fields.BeginStep();
+        state.Basis.BeginStep();
         state.Traces.Begin(record.Step, attempt, state.Fields.All.Count);
         state.Remaining = null;
         ObserveTimeStep(record.TimeStep);
@@ -108,8 +113,10 @@ public sealed partial class RunMonitor
         if (record.TimeStep is { } timeStep) step.TimeStep = timeStep;
         fields.Observe(record);
         step.Add(record.Iteration, fields.Norm, fields.Need, Done(record, fields.Need), fields.NotFinite);
+        state.Basis.Observe(state, record);
+        if (!double.IsNaN(state.Basis.Cosine)) step.Cosines.Add(state.Basis.Cosine);
         state.Remaining = StepForecaster.Foretell(step, state.Paths);
-        var rate = step.Z.Count < 2 ? double.NaN : Math.Pow(10, Robust.TheilSen(step.Z, StepForecaster.RateWindow).Value);
+        var rate = step.Z.Count < 2 ? double.NaN : Math.Pow(10, Robust.Slope(step.Z, StepForecaster.RateWindow).Slope);
         state.Trace.Add(new TraceRow(record.Iteration, record.Seq, fields.Norm, step.Z[0], fields.Need ?? double.NaN, rate, state.Remaining?.Iterations ?? double.NaN,
             record.Relaxation ?? double.NaN, step.Done), fields);
     }
@@ -156,6 +163,7 @@ public sealed partial class RunMonitor
         var closed = new ClosedStep(step.Step, step.Attempt, step.Ordinal, outcome, iterations, step.Need, state.Fields.Norm,
             !step.Incomplete && !step.HasNotFinite, step.Time, step.TimeStep, step.FirstSeq, state.Seq, state.At, state.Revision);
         state.Account(closed);
+        state.Basis.StepClosed(state, closed);
         var rejected = outcome == StepOutcome.Rejected;
         if (rejected) state.SendsAttempts = true;
         alerts.Settle(rejected, step.Ordinal, state.Seq, changes);
@@ -189,6 +197,7 @@ public sealed partial class RunMonitor
         state.Settings = record.Settings!;
         state.Revision = record.Revision;
         state.RelaxationSent = null;
+        if (settings.Drops(record.Revision)) state.Basis.DropHistory();
         foreach (var listener in listeners) listener.SettingsInForce(state, fromStep);
         if (changed) Restart("applied", RestartCause.Settings);
     }
@@ -197,6 +206,7 @@ public sealed partial class RunMonitor
     {
         state.Fields.Declare(record.Fields);
         if (state.Step.InProgress) state.Step.Incomplete = true;
+        state.Basis.Resize(state, record.BasisMapped);
         Restart("resize", RestartCause.Resize);
     }
 

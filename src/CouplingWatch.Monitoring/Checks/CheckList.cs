@@ -3,8 +3,12 @@ using CouplingWatch.Monitoring.Checks.Divergence;
 using CouplingWatch.Monitoring.Checks.Drift;
 using CouplingWatch.Monitoring.Checks.FalseClaim;
 using CouplingWatch.Monitoring.Checks.NoiseFloor;
+using CouplingWatch.Monitoring.Checks.Oscillation;
+using CouplingWatch.Monitoring.Checks.Polluted;
 using CouplingWatch.Monitoring.Checks.Slow;
+using CouplingWatch.Monitoring.Checks.Stale;
 using CouplingWatch.Monitoring.Checks.Stall;
+using CouplingWatch.Monitoring.Checks.Starved;
 using CouplingWatch.Monitoring.Checks.UnequalFields;
 
 namespace CouplingWatch.Monitoring.Checks;
@@ -16,6 +20,10 @@ internal static class CheckList
     [
         new DivergenceCheck(options.Divergence),
         new FalseClaimCheck(options.FalseClaim),
+        new PollutedCheck(options.Polluted),
+        new StarvedCheck(options.Starved),
+        new StaleCheck(options.Stale),
+        new OscillationCheck(options.Oscillation),
         new NoiseFloorCheck(options.Progress),
         new SlowCheck(options.Progress),
         new StallCheck(options.Progress),

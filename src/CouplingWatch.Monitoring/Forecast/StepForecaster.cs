@@ -1,5 +1,6 @@
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Statistics;
+using CouplingWatch.Numerics.Sequences;
 
 namespace CouplingWatch.Monitoring.Forecast;
 
@@ -28,12 +29,12 @@ internal static class StepForecaster
         if (lengths.Length >= LeastPaths)
         {
             lengths.Sort();
-            return new Remaining(Robust.Quantile(lengths, 0.5), Robust.Quantile(lengths, 0.1), Robust.Quantile(lengths, 0.9), true);
+            return new Remaining(Quantile.OfSorted(lengths, 0.5), Quantile.OfSorted(lengths, 0.1), Quantile.OfSorted(lengths, 0.9), true);
         }
         if (step.Needs.Count < 2) return null;
-        var slope = Robust.TheilSen(step.Needs, RateWindow);
-        if (!(slope.Value < -LeastFall)) return null;
-        return new Remaining(need / -slope.Value, slope.Low < 0 ? need / -slope.Low : null, slope.High < -LeastFall ? need / -slope.High : null, false);
+        var slope = Robust.Slope(step.Needs, RateWindow);
+        if (!(slope.Slope < -LeastFall)) return null;
+        return new Remaining(need / -slope.Slope, slope.Low < 0 ? need / -slope.Low : null, slope.High < -LeastFall ? need / -slope.High : null, false);
     }
 }
 

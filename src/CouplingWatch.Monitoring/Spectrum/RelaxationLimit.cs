@@ -15,7 +15,7 @@ internal sealed record RelaxationLimit(double Largest, double Best, string Groun
     public static RelaxationLimit? FromGrowth(RunState run)
     {
         if (run.Settings.Method != CouplingMethod.Fixed || run.RelaxationInForce is not { } relaxation || run.Step.Z.Count < 5) return null;
-        var slope = Robust.TheilSen(run.Step.Z, 5).Value;
+        var slope = Robust.Slope(run.Step.Z, 5).Slope;
         if (!(slope > 0)) return null;
         var growth = Math.Pow(10, slope);
         return new RelaxationLimit(2 * relaxation / (1 + growth), relaxation / (1 + growth), "its growth allows", false);

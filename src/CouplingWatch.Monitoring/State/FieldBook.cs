@@ -90,6 +90,21 @@ internal sealed class FieldBook
         Norm = !Euclidean ? largest : squares is > 1e-300 and < 1e300 || largest == 0 ? Math.Sqrt(squares) : ScaledNorm(largest);
     }
 
+    /// <summary>Weighted norm of the unknown fields of a group; of all of them for null.</summary>
+    public double NormOf(string? group)
+    {
+        if (group is null) return Norm;
+        double squares = 0, largest = 0;
+        foreach (var field in unknowns)
+        {
+            if (!field.Sent || field.Declared.Group != group) continue;
+            var weighted = Math.Abs(field.Weight * field.Residual);
+            squares += weighted * weighted;
+            largest = Math.Max(largest, weighted);
+        }
+        return Euclidean ? Math.Sqrt(squares) : largest;
+    }
+
     public void Accept()
     {
         foreach (var field in fields) field.Accept();

@@ -1,3 +1,4 @@
+using CouplingWatch.Monitoring.Basis;
 using CouplingWatch.Monitoring.Forecast;
 using CouplingWatch.Monitoring.Spectrum;
 using CouplingWatch.Monitoring.Statistics;
@@ -47,6 +48,15 @@ internal sealed class RunState(string run)
     public TraceRing Traces { get; } = new();
 
     public PathBook Paths { get; } = new();
+
+    /// <summary>Secant columns, vectors and what each update rests on, by group.</summary>
+    public BasisBook Basis { get; } = new();
+
+    /// <summary>The method makes its updates with secant columns.</summary>
+    public bool UsesSecants => Settings.Method is CouplingMethod.IqnIls or CouplingMethod.IqnIlsm or CouplingMethod.Mvqn;
+
+    /// <summary>How many earlier steps lend their columns: as declared, else as reported.</summary>
+    public int HistorySteps => Settings.HistorySteps ?? Basis.ReportedHistory;
 
     public Cadence Cadence { get; } = new();
 

@@ -65,6 +65,9 @@ internal sealed class SettingsBook
         stepsAfter = 0;
     }
 
+    /// <summary>The revision came with the command to drop the history.</summary>
+    public bool Drops(int revision) => revisions.Exists(r => r.Revision == revision && r.Commands.Contains("dropHistory"));
+
     /// <summary>A complete step ran under the revision in force.</summary>
     public void StepDone(int iterations)
     {

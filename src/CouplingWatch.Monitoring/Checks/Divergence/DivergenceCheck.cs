@@ -35,7 +35,7 @@ internal sealed class DivergenceCheck(DivergenceOptions options) : ICheck
         var z = step.Z[0];
         if (!(z - step.LowestZ > options.GrowthDecades) || !(z > step.FirstZ + options.AboveStartDecades)) return false;
         if (z < step.HighestZ - options.BelowHighestDecades || step.Last - step.LowestAt < options.LowestIterationsBack) return false;
-        slope = Robust.TheilSen(step.Z, options.SlopeWindow).Value;
+        slope = Robust.Slope(step.Z, options.SlopeWindow).Slope;
         return slope > options.LeastSlope;
     }
 

@@ -17,7 +17,7 @@ internal sealed class SlowCheck(ProgressOptions options) : ICheck
         var step = run.Step;
         var progress = ProgressState.Of(step, options);
         if (!progress.Judged || !progress.Crawls) return;
-        var slope = Robust.TheilSen(step.Z, StepState.ProgressWindow).Value;
+        var slope = Robust.Slope(step.Z, StepState.ProgressWindow).Slope;
         var needed = step.Need is { } need && need > 0 ? need / -slope : double.NaN;
         var left = run.Settings.IterationCap is { } cap ? cap - step.Iteration : double.NaN;
         var tooFar = needed > options.TimesTheCapLeft * left;

@@ -2,6 +2,7 @@ using System.Text.Json.Nodes;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Statistics;
 using CouplingWatch.Monitoring.Wording;
+using CouplingWatch.Numerics.Sequences;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring.Checks.UnequalFields;
@@ -64,7 +65,7 @@ internal sealed class UnequalFieldsCheck(UnequalFieldsOptions options) : ICheck
                 if (a == b || fields[a].Declared.Group != fields[b].Declared.Group) continue;
                 var n = Math.Min(late[a].Count, late[b].Count);
                 for (var i = 0; i < n; i++) lead[i] = late[a][i] - late[b][i];
-                var median = Robust.Median(lead[..n]);
+                var median = Quantile.Median(lead[..n]);
                 if (!(median > largest)) continue;
                 largest = median;
                 (last, first) = (a, b);
