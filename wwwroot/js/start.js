@@ -75,3 +75,19 @@ if (scroll !== null) {
   sessionStorage.removeItem('couplingwatch.scroll');
   requestAnimationFrame(() => scrollTo(0, Number(scroll)));
 }
+
+// Copies the text of the element a button names; where the browser allows no copying, selects it.
+document.addEventListener('click', async (e) => {
+  const button = e.target instanceof Element ? e.target.closest('[data-copy]') : null;
+  const from = button && part(button.dataset.copy);
+  if (!from) return;
+  const word = button.textContent;
+  try {
+    await navigator.clipboard.writeText(from.textContent);
+    button.textContent = 'Copied';
+  } catch {
+    getSelection().selectAllChildren(from);
+    button.textContent = 'Selected';
+  }
+  setTimeout(() => { button.textContent = word; }, 2000);
+});
