@@ -59,6 +59,23 @@ public sealed class SmallMatrix
         return result;
     }
 
+    /// <summary>The identity of a size.</summary>
+    public static SmallMatrix Identity(int size)
+    {
+        var result = new SmallMatrix(size, size);
+        for (int i = 0; i < size; i++) result[i, i] = 1;
+        return result;
+    }
+
+    /// <summary>The transpose, as a copy.</summary>
+    public SmallMatrix Transpose()
+    {
+        var result = new SmallMatrix(Columns, Rows);
+        for (int j = 0; j < Columns; j++)
+            for (int i = 0; i < Rows; i++) result.entries[(i * Columns) + j] = entries[(j * Rows) + i];
+        return result;
+    }
+
     /// <summary>The product with another matrix. Cost rows × columns × columns of the other.</summary>
     /// <exception cref="ArgumentException">The inner sizes differ.</exception>
     public SmallMatrix Times(SmallMatrix right)

@@ -1,5 +1,3 @@
-using MathNet.Numerics.LinearAlgebra.Double;
-
 namespace CouplingWatch.Numerics.Matrices;
 
 /// <summary>
@@ -41,21 +39,24 @@ public sealed class TruncatedSvd
         ArgumentNullException.ThrowIfNull(matrix);
         if (!(cut >= 0 && cut < 1)) throw new ArgumentOutOfRangeException(nameof(cut), cut, "must be at least 0 and below 1");
         if (matrix.Rows == 0 || matrix.Columns == 0) throw new ArgumentException($"a {matrix.Rows}×{matrix.Columns} matrix has no singular values", nameof(matrix));
-        double[] entries = matrix.ToColumnMajor();
-        foreach (double entry in entries)
-            if (!double.IsFinite(entry)) throw new ArgumentException($"entry {entry} is not finite", nameof(matrix));
+        for (int j = 0; j < matrix.Columns; j++)
+            foreach (double entry in matrix.Column(j))
+                if (!double.IsFinite(entry)) throw new ArgumentException($"entry {entry} in column {j} is not finite", nameof(matrix));
 
-        var svd = new DenseMatrix(matrix.Rows, matrix.Columns, entries).Svd(true);
-        double[] all = svd.S.ToArray();
+        bool wide = matrix.Rows < matrix.Columns;
+        SmallMatrix turned = wide ? matrix.Transpose() : matrix.Copy();
+        SmallMatrix rotation = SmallMatrix.Identity(turned.Columns);
+        double[] all = JacobiSvd.Run(turned, rotation);
         int rank = 0;
         while (rank < all.Length && all[rank] > 0 && all[rank] > cut * all[0]) rank++;
-        var left = new SmallMatrix(matrix.Rows, rank);
-        var right = new SmallMatrix(matrix.Columns, rank);
+        var scaled = new SmallMatrix(turned.Rows, rank);
+        var plain = new SmallMatrix(rotation.Rows, rank);
         for (int k = 0; k < rank; k++)
         {
-            for (int i = 0; i < matrix.Rows; i++) left[i, k] = svd.U[i, k];
-            for (int j = 0; j < matrix.Columns; j++) right[j, k] = svd.VT[k, j];
+            for (int i = 0; i < turned.Rows; i++) scaled[i, k] = turned[i, k] / all[k];
+            rotation.Column(k).CopyTo(plain.Column(k));
         }
+        var (left, right) = wide ? (plain, scaled) : (scaled, plain);
         return new TruncatedSvd(left, all[..rank], right, all);
     }
 
@@ -88,9 +89,6 @@ public sealed class TruncatedSvd
         SmallMatrix along = images.Times(Right);
         for (int k = 0; k < Rank; k++)
             foreach (ref double value in along.Column(k)) value /= Kept[k];
-        var transposed = new SmallMatrix(Rank, Left.Rows);
-        for (int k = 0; k < Rank; k++)
-            for (int i = 0; i < Left.Rows; i++) transposed[k, i] = Left[i, k];
-        return along.Times(transposed);
+        return along.Times(Left.Transpose());
     }
 }

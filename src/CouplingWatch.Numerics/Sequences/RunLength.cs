@@ -12,7 +12,7 @@ namespace CouplingWatch.Numerics.Sequences;
 /// </summary>
 public static class RunLength
 {
-    private const int Nodes = 200;
+    private const int Nodes = 80;
 
     /// <summary>One-sided CUSUM started at zero.</summary>
     /// <param name="allowance">k, 0 or more.</param>

@@ -77,4 +77,27 @@ public static class LongVector
             Vector512.FusedMultiplyAdd(f, Vector512.LoadUnsafe(ref y, (nuint)i), Vector512.LoadUnsafe(ref x, (nuint)i)).StoreUnsafe(ref x, (nuint)i);
         for (; i < n; i++) target[i] = Math.FusedMultiplyAdd(factor, source[i], target[i]);
     }
+
+    /// <summary>The plane rotation x ← c·x + s·y, y ← c·y − s·x, entry by entry.</summary>
+    /// <exception cref="ArgumentException">The lengths differ.</exception>
+    public static void Rotate(Span<double> x, Span<double> y, double c, double s)
+    {
+        if (x.Length != y.Length) throw new ArgumentException($"lengths {x.Length} and {y.Length} differ", nameof(y));
+        ref double a = ref MemoryMarshal.GetReference(x);
+        ref double b = ref MemoryMarshal.GetReference(y);
+        Vector512<double> cc = Vector512.Create(c), ss = Vector512.Create(s);
+        int n = x.Length, i = 0;
+        for (; i <= n - Lanes; i += Lanes)
+        {
+            Vector512<double> p = Vector512.LoadUnsafe(ref a, (nuint)i), q = Vector512.LoadUnsafe(ref b, (nuint)i);
+            ((cc * p) + (ss * q)).StoreUnsafe(ref a, (nuint)i);
+            ((cc * q) - (ss * p)).StoreUnsafe(ref b, (nuint)i);
+        }
+        for (; i < n; i++)
+        {
+            double p = x[i], q = y[i];
+            x[i] = (c * p) + (s * q);
+            y[i] = (c * q) - (s * p);
+        }
+    }
 }
