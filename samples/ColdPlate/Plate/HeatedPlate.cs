@@ -21,7 +21,7 @@ public sealed class HeatedPlate
     /// <param name="mesh">The plate; same length and columns as the channel.</param>
     /// <param name="material">Conductivity at the reference temperature, and heat capacity.</param>
     /// <param name="slope">Relative growth of the conductivity, 1/K.</param>
-    /// <param name="tolerance">Relative change of temperature at which the inner iteration stops, between 1e-14 and 1e-2.</param>
+    /// <param name="tolerance">Relative change of the wall temperature at which the inner iteration stops, between 1e-14 and 1e-2.</param>
     public HeatedPlate(LayerMesh mesh, LayerMaterial material, double slope, double tolerance)
     {
         ArgumentNullException.ThrowIfNull(mesh);
@@ -84,7 +84,7 @@ public sealed class HeatedPlate
     private bool Converged()
     {
         double change = 0, size = 0;
-        for (var n = 0; n < temperature.Length; n++)
+        for (var n = 0; n < temperature.Length; n += nodes)
         {
             change += (temperature[n] - before[n]) * (temperature[n] - before[n]);
             size += temperature[n] * temperature[n];
