@@ -6,7 +6,8 @@ namespace CouplingWatch.Ndjson;
 
 /// <summary>One line cut from a stream: its number from 1, its bytes as received without the line end, and what it is.</summary>
 /// <param name="Bytes">Valid until the next line is asked for; copy what is to be kept.</param>
-public readonly record struct NdjsonLine(long Number, ReadOnlySequence<byte> Bytes, RecordResult Result);
+/// <param name="Ended">False: the stream ended before the line did.</param>
+public readonly record struct NdjsonLine(long Number, ReadOnlySequence<byte> Bytes, RecordResult Result, bool Ended = true);
 
 /// <summary>Cuts lines from a pipe and reads each. How the bytes were batched does not matter; memory is bounded by the longest line.</summary>
 public static class NdjsonStream
@@ -27,7 +28,7 @@ public static class NdjsonStream
         {
             var read = await pipe.ReadAsync(cancel).ConfigureAwait(false);
             var buffer = read.Buffer;
-            while (TryCutLine(ref buffer, ref scanned, read.IsCompleted, out var line))
+            while (TryCutLine(ref buffer, ref scanned, read.IsCompleted, out var line, out var ended))
             {
                 if (passingOver)
                 {
@@ -36,7 +37,7 @@ public static class NdjsonStream
                 }
                 number++;
                 var result = line.Length > longest ? TooLong(number, longest) : reader.Read(line, number);
-                if (!result.IsBlank) yield return new NdjsonLine(number, line, result);
+                if (!result.IsBlank) yield return new NdjsonLine(number, line, result, ended);
             }
             if (buffer.Length > longest)
             {
@@ -53,9 +54,10 @@ public static class NdjsonStream
     /// <summary>Cuts the next line, without its LF, off the front of the buffer; false when there is no whole line.</summary>
     /// <param name="scanned">How much of the buffer is known to hold no line end, so that a long line is searched once only.</param>
     /// <param name="final">True: nothing follows, so a rest without a line end is a line.</param>
-    private static bool TryCutLine(ref ReadOnlySequence<byte> buffer, ref long scanned, bool final, out ReadOnlySequence<byte> line)
+    private static bool TryCutLine(ref ReadOnlySequence<byte> buffer, ref long scanned, bool final, out ReadOnlySequence<byte> line, out bool ended)
     {
         line = buffer;
+        ended = true;
         if (buffer.Slice(scanned).PositionOf((byte)'\n') is { } end)
         {
             line = buffer.Slice(0, end);
@@ -64,6 +66,7 @@ public static class NdjsonStream
             return true;
         }
         scanned = buffer.Length;
+        ended = false;
         if (!final || buffer.IsEmpty) return false;
         buffer = buffer.Slice(buffer.End);
         scanned = 0;

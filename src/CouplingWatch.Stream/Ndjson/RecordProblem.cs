@@ -47,6 +47,10 @@ public static class ProblemCodes
     public const string UnsupportedFormat = "unsupported-format";
     /// <summary>A kind this version does not know, sent with <c>"must":true</c>.</summary>
     public const string MustUnderstand = "must-understand";
+    /// <summary>The stream does not begin with <c>open</c>.</summary>
+    public const string MissingOpen = "missing-open";
+    /// <summary>A seq that was used before, with other content.</summary>
+    public const string SeqConflict = "seq-conflict";
     /// <summary>Sketch rows or seed other than those fixed by the first sketch.</summary>
     public const string SketchChanged = "sketch-changed";
 }

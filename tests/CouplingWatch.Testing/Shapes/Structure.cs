@@ -14,6 +14,7 @@ public static class Structure
         if (expected is null || actual is null) return expected is null && actual is null ? null : $"{path}: {expected ?? "null"} / {actual ?? "null"}";
         if (expected is double a && actual is double b)
             return (double.IsNaN(a) && double.IsNaN(b)) || BitConverter.DoubleToInt64Bits(a) == BitConverter.DoubleToInt64Bits(b) ? null : $"{path}: {a:R} / {b:R}";
+        if (expected is double[] numbers && actual is double[] others && numbers.AsSpan().SequenceEqual(others)) return null;
         if (expected is JsonNode node) return JsonNode.DeepEquals(node, actual as JsonNode) ? null : $"{path}: {node.ToJsonString()} / {(actual as JsonNode)?.ToJsonString()}";
         if (expected is NamedValues named) return NamedDifference(named, actual as NamedValues, path);
         if (expected is IDictionary map) return MapDifference(map, actual as IDictionary, path);
