@@ -1,0 +1,35 @@
+using CouplingWatch.Components.Parts;
+using CouplingWatch.Wire;
+
+namespace CouplingWatch.Components.RunPage;
+
+/// <summary>The answer to one of the five questions: left of the seam.</summary>
+/// <param name="Mark">Sign and seam.</param>
+/// <param name="Say">One sentence of at most some 20 words.</param>
+public sealed record Answer(StateMark Mark, string Say)
+{
+    /// <summary>What it means, a sentence or two each.</summary>
+    public IReadOnlyList<string> Notes { get; init; } = [];
+
+    /// <summary>Key numbers, by name.</summary>
+    public IReadOnlyList<Fact> Facts { get; init; } = [];
+
+    /// <summary>The answer where none can be given: why, and what to send.</summary>
+    public static Answer NotJudged(RunDetail run, string otherwise, params string[] checks)
+    {
+        ArgumentNullException.ThrowIfNull(run);
+        var lacking = run.NotJudged.FirstOrDefault(n => checks.Contains(n.Check));
+        return lacking is null
+            ? new Answer(StateMark.NotJudged, otherwise)
+            : new Answer(StateMark.NotJudged, $"Not judged: {lacking.Why}.") { Notes = lacking.Send.Length > 0 ? [$"For it, send {lacking.Send}."] : [] };
+    }
+
+    /// <summary>The open alert of one of the checks, worst first; null when all is quiet.</summary>
+    public static Alert? Open(RunDetail run, params string[] checks) =>
+        run.Summary.OpenAlerts
+            .Where(a => checks.Contains(a.Check) && a.State is AlertState.Unacknowledged or AlertState.Acknowledged && checks.Contains(a.Check))
+            .OrderByDescending(a => a.Severity).FirstOrDefault();
+}
+
+/// <summary>A key number: its name, its value with unit, and why it is not known where it is not.</summary>
+public sealed record Fact(string Name, string Value, string? Why = null);

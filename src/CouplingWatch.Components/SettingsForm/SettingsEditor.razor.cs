@@ -1,0 +1,92 @@
+using CouplingWatch.Components.Feed;
+using CouplingWatch.Records;
+using CouplingWatch.Wire;
+using Microsoft.AspNetCore.Components;
+
+namespace CouplingWatch.Components.SettingsForm;
+
+/// <summary>The form that publishes a settings revision.</summary>
+public sealed partial class SettingsEditor
+{
+    private SettingsDraft draft = default!;
+    private IReadOnlyList<SettingChange> changes = [];
+    private string? problem;
+    private bool busy;
+    private object? started;
+
+    [Inject] private IWatchFeed Feed { get; set; } = default!;
+
+    [Parameter, EditorRequired] public string Run { get; set; } = "";
+    [Parameter, EditorRequired] public CouplingSettings InForce { get; set; } = default!;
+    [Parameter, EditorRequired] public AdjustableSettings Adjustable { get; set; } = default!;
+
+    /// <summary>The newest revision there is.</summary>
+    [Parameter, EditorRequired] public int Latest { get; set; }
+
+    /// <summary>Values to begin with: an advice or a filter tried on the ledger. A new instance starts a new draft.</summary>
+    [Parameter] public Action<SettingsDraft>? Start { get; set; }
+
+    [Parameter] public EventCallback<int> OnPublished { get; set; }
+
+    [Parameter] public EventCallback OnClose { get; set; }
+
+    private string[] Fixed =>
+        [.. SettingKind.All.Where(k => !draft.Adjustable.Allows(k.Name) && k.Get(draft.InForce) is not null).Select(k => $"{k.Words} {k.Shown(draft.InForce)}")];
+
+    protected override void OnParametersSet()
+    {
+        if (draft is null || !ReferenceEquals(started, Start))
+        {
+            started = Start;
+            draft = new SettingsDraft(InForce, Adjustable, Latest);
+            Start?.Invoke(draft);
+            problem = null;
+        }
+        changes = draft.Changes;
+    }
+
+    protected override bool ShouldRender()
+    {
+        changes = draft.Changes;
+        return true;
+    }
+
+    private async Task PublishAsync()
+    {
+        if (busy || draft.Hindrance is not null) return;
+        busy = true;
+        problem = null;
+        try
+        {
+            var outcome = await Feed.PublishAsync(Run, draft.Proposal(), draft.MadeFrom);
+            problem = outcome.Problem;
+            if (outcome.Revision is { } revision) await OnPublished.InvokeAsync(revision);
+        }
+        finally
+        {
+            busy = false;
+        }
+    }
+
+    private void Rebase()
+    {
+        var old = draft;
+        draft = new SettingsDraft(InForce, Adjustable, Latest) { Reason = old.Reason, FallBack = old.FallBack };
+        foreach (var change in old.Changes)
+        {
+            var kind = SettingKind.Named(change.Setting)!;
+            draft.Type(kind, old.Text(kind));
+        }
+        foreach (var command in old.GivenCommands) draft.Command(command, true);
+        problem = null;
+    }
+
+    private string May(SettingKind kind) =>
+        draft.Adjustable.Ranges.TryGetValue(kind.Name, out var range) ? SettingsDraft.Range(range) : "as declared by the run";
+
+    private static string Words(SettingChange change) => SettingKind.Named(change.Setting)?.Words ?? change.Setting;
+
+    private static string Id(SettingKind kind) => "set-" + kind.Name;
+
+    private static string Value(ChangeEventArgs e) => e.Value as string ?? "";
+}
