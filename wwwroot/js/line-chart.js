@@ -70,7 +70,7 @@ function options(spec, plot) {
     fill: { type: 'solid', opacity: 1 },
     states: { hover: { filter: { type: 'none' } }, active: { filter: { type: 'none' } } },
     legend: { show: false }, dataLabels: { enabled: false },
-    grid: { padding: { left: 4, right: spec.y.opposite ? 44 : 10, top: -8, bottom: -4 }, position: 'back' },
+    grid: { padding: { left: 4, right: spec.y.opposite ? 44 : 10, top: 2, bottom: -4 }, position: 'back' },
     xaxis: {
       type: 'numeric', min: spec.x.low, max: spec.x.high, tickAmount: spec.x.ticks, tooltip: { enabled: false }, crosshairs: { show: true },
       labels: { rotate: 0, hideOverlappingLabels: true, formatter: v => label(spec.x, v) },
@@ -102,7 +102,7 @@ function across(rule) {
 function upright(rule, narrow) {
   const side = (text, offset, anchor, lineOffset) => ({
     x: rule.at, offsetX: lineOffset, strokeDashArray: rule.role === 'cap' ? 4 : 0, borderColor: 'currentColor',
-    label: { text: text ?? '', borderColor: 'transparent', orientation: 'horizontal', textAnchor: anchor, offsetX: offset, offsetY: -2, style: plain(`rule-${rule.role}${anchor === 'start' ? '-after' : ''}`) },
+    label: { text: text ?? '', borderColor: 'transparent', orientation: 'horizontal', textAnchor: anchor, offsetX: offset, offsetY: -7, style: plain(`rule-${rule.role}${anchor === 'start' ? '-after' : ''}`) },
   });
   if (rule.role === 'now') return [side(rule.before, narrow ? -4 : -6, 'end', -1.5), side(rule.after, narrow ? 4 : 6, 'start', 1.5)];
   return [side(rule.before, -6, 'end', 0)];
@@ -111,7 +111,7 @@ function upright(rule, narrow) {
 function opposite(axis) {
   if (!axis.opposite) return [];
   const step = (axis.high - axis.low) / axis.ticks;
-  return axis.opposite.map((text, i) => ({ y: axis.low + i * step, strokeDashArray: 0, borderColor: 'transparent', label: { text, borderColor: 'transparent', position: 'right', textAnchor: 'start', offsetX: 8, offsetY: 12, style: plain('rule-opposite') } }))
+  return axis.opposite.map((text, i) => ({ y: axis.low + i * step, strokeDashArray: 0, borderColor: 'transparent', label: { text, borderColor: 'transparent', position: 'right', textAnchor: 'start', offsetX: 8, offsetY: 4, style: plain('rule-opposite') } }))
     .filter(a => a.label.text);
 }
 

@@ -21,6 +21,12 @@ public sealed partial class LineChart
     /// <summary>What the arrow keys walk: "iterations".</summary>
     [Parameter] public string Of { get; set; } = "points";
 
+    /// <summary>What the upright axis shows.</summary>
+    [Parameter] public string? YName { get; set; }
+
+    /// <summary>What the lying axis shows.</summary>
+    [Parameter] public string? XName { get; set; }
+
     /// <summary>Which series the arrow keys walk.</summary>
     [Parameter] public SeriesRole Walks { get; set; } = SeriesRole.Path;
 

@@ -16,7 +16,7 @@ public sealed record LineChartSpec
     public IReadOnlyList<ChartNote> Notes { get; init; } = [];
 
     /// <summary>The form the script reads; equal plots give equal text, so an unchanged one is not sent again.</summary>
-    public string ToJson() => JsonSerializer.Serialize(this with { Series = [.. Series.Select(s => s.Thinned(MostPoints))] }, Options);
+    public string ToJson() => JsonSerializer.Serialize(this with { Series = [.. Series.Select(s => s.Thinned(MostPoints).Rounded())] }, Options);
 
     private static readonly JsonSerializerOptions Options = new(JsonSerializerDefaults.Web)
     {
@@ -60,6 +60,11 @@ public sealed record ChartSeries(SeriesRole Role, IReadOnlyList<ChartPoint> Poin
         }
         return this with { Points = kept };
     }
+
+    /// <summary>Heights to a ten-thousandth of a decade: what a screen can show. The texts stay exact.</summary>
+    public ChartSeries Rounded() => this with { Points = [.. Points.Select(p => p with { Y = Round(p.Y), Top = Round(p.Top) })] };
+
+    private static double? Round(double? value) => value is { } v ? Math.Round(v, 4) : null;
 }
 
 /// <param name="Y">Value, or the lower edge of a band; null leaves a gap.</param>

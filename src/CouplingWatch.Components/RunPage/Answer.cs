@@ -24,10 +24,17 @@ public sealed record Answer(StateMark Mark, string Say)
             : new Answer(StateMark.NotJudged, $"Not judged: {lacking.Why}.") { Notes = lacking.Send.Length > 0 ? [$"For it, send {lacking.Send}."] : [] };
     }
 
+    /// <summary>A phrase as a sentence of its own: a capital at its head, a full stop at its end.</summary>
+    public static string Sentence(string text)
+    {
+        var plain = text.TrimStart(':', ' ');
+        return plain.Length == 0 ? "" : char.ToUpperInvariant(plain[0]) + plain[1..] + (plain[^1] is '.' or '!' or '?' ? "" : ".");
+    }
+
     /// <summary>The open alert of one of the checks, worst first; null when all is quiet.</summary>
     public static Alert? Open(RunDetail run, params string[] checks) =>
         run.Summary.OpenAlerts
-            .Where(a => checks.Contains(a.Check) && a.State is AlertState.Unacknowledged or AlertState.Acknowledged && checks.Contains(a.Check))
+            .Where(a => checks.Contains(a.Check) && a.State is not (AlertState.Returned or AlertState.Closed or AlertState.Shelved))
             .OrderByDescending(a => a.Severity).FirstOrDefault();
 }
 

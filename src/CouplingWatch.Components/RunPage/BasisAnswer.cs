@@ -32,7 +32,7 @@ public static class BasisAnswer
             _ => $"Yes: {kept}{Which(basis, left)}.",
         };
         var notes = new List<string>();
-        if (alert is not null) notes.Add(alert.Text);
+        if (alert is not null) notes.Add(Answer.Sentence(alert.Text));
         else if (live > 0 && liveKept == live) notes.Add("No column of the present step is left out, so the basis is not starved.");
         if (alert?.Check == "starved" && basis.Rule == Records.FilterRule.PivotRatio)
             notes.Add("Under pivot-ratio a column goes as soon as it is small beside the largest, and near convergence every new column is small.");

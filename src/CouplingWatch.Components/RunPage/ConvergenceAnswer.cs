@@ -53,22 +53,22 @@ public static class ConvergenceAnswer
         if (run.Rate is { } r && double.IsFinite(r.Factor)) notes.Add(Falls(r));
         var far = run.Paths.Where(p => p.Points.Count > 0 && p.Points[^1].Need is { } n && double.IsFinite(n)).ToArray();
         if (far.Length > 0)
-            notes.Add(string.Join("; ", far.OrderByDescending(p => p.Governs).Select(p => p.Points[^1].Need <= 1e-9 ? $"{p.Field} has met its target" : $"{p.Field} has {Numbers.Fixed(p.Points[^1].Need, 1)} decades to go")) + ".");
+            notes.Add(Answer.Sentence(string.Join("; ", far.OrderByDescending(p => p.Governs).Select(p => p.Points[^1].Need <= 1e-9 ? $"{p.Field} has met its target" : $"{p.Field} has {Numbers.Fixed(p.Points[^1].Need, 1)} decades to go"))));
         if (run.StepForecast is { Basis: "paths" } && governing.BandSteps > 0) notes.Add($"Foretold from {Numbers.Count(governing.BandSteps, "earlier step")}.");
-        if (Answer.Open(run, "slow", "stall", "noise-floor", "oscillation", "divergence") is { } alert) notes.Add(alert.Text);
+        if (Answer.Open(run, "slow", "stall", "noise-floor", "oscillation", "divergence") is { } alert) notes.Add(Answer.Sentence(alert.Text));
         return notes;
     }
 
     private static string Falls(RateEstimate r) => r.Factor switch
     {
         < 0.5 => $"The residual falls by a factor of {Numbers.Sig(1 / r.Factor, 2)} an iteration (10–90 %: {Range(1 / r.High, 1 / r.Low)}).",
-        < 1 => $"Each iteration keeps {Numbers.Sig(r.Factor, 2)} of the residual (10–90 %: {Range(r.Low, r.High)}).",
+        < 1 => $"Each iteration keeps {Numbers.Sig(r.Factor)} of the residual (10–90 %: {Range(r.Low, r.High)}).",
         _ => $"The residual grows {Numbers.Sig(r.Factor, 2)}-fold an iteration (10–90 %: {Range(r.Low, r.High)}).",
     };
 
     private static string Keeps(RateEstimate? r) => r is { } rate ? $"each iteration keeps {Numbers.Sig(rate.Factor, 2)} of the residual" : "it falls too slowly";
 
-    private static string Range(double low, double high) => $"{Numbers.Sig(low, 2)} to {Numbers.Sig(high, 2)}";
+    private static string Range(double low, double high) => $"{Numbers.Sig(low)} to {Numbers.Sig(high)}";
 
     private static IEnumerable<Fact> Norms(RunDetail run) => run.Paths.Where(p => p.Points.Count > 0).Select(p => new Fact($"‖r‖ {p.Field}", Numbers.WithUnit(p.Points[^1].Norm, p.Unit)));
 

@@ -19,12 +19,12 @@ public static class CostAnswer
         else if (cost.PassSeconds is { } pass) parts.Add($"{Seconds(pass)} a pass, {Numbers.Count(cost.Passes, "pass", "passes")} so far");
         if (s.State == "live" && s.Forecast?.Ends is { } ends)
             parts.Add($"it ends {Times.Near(ends, now, zone)}{(s.AllocationEndsAt is null ? "" : late ? ", after this allocation" : ", in this allocation")}");
-        var say = parts.Count == 0 ? "Not known yet." : Capital(string.Join("; ", parts)) + ".";
+        var say = parts.Count == 0 ? "Not known yet." : Answer.Sentence(string.Join("; ", parts));
         var mark = late ? StateMark.LosingTime : parts.Count == 0 ? StateMark.Learning : s.State is "finished" or "stopped" ? StateMark.Finished : StateMark.OnCourse;
         var notes = new List<string>();
         if (s.Forecast is { } f && s.State == "live") notes.Add(f.Text);
-        if (cost.LostText is { Length: > 0 } lost) notes.Add(Capital(lost.EndsWith('.') ? lost : lost + "."));
-        notes.Add(Capital(cost.SurrogateText.EndsWith('.') ? cost.SurrogateText : cost.SurrogateText + "."));
+        if (cost.LostText is { Length: > 0 } lost) notes.Add(Answer.Sentence(lost));
+        notes.Add(Answer.Sentence(cost.SurrogateText));
         return new Answer(mark, say) { Notes = notes, Facts = Facts(run, cost) };
     }
 
@@ -45,5 +45,4 @@ public static class CostAnswer
 
     private static string Seconds(double? seconds) => seconds is { } s && double.IsFinite(s) && s < 1e9 ? Times.Span(TimeSpan.FromSeconds(s)) : Numbers.Dash;
 
-    private static string Capital(string text) => text.Length == 0 ? text : char.ToUpperInvariant(text[0]) + text[1..];
 }

@@ -16,17 +16,20 @@ public sealed record SettingKind(string Name, string Words, bool AltersResult, F
     /// <summary>Whole numbers only.</summary>
     public bool Whole { get; init; }
 
+    /// <summary>Written as a power of ten, whatever its size.</summary>
+    public bool Power { get; init; }
+
     /// <summary>Every setting a revision can change, in the order of the form.</summary>
     public static IReadOnlyList<SettingKind> All { get; } =
     [
         new("method", "method", false, s => s.Method is { } m ? Kebab(m) : null, t => Choice<CouplingMethod>(t, m => new() { Method = m })),
         Number("relaxation", "relaxation", false, s => s.Relaxation, v => new() { Relaxation = v }),
         new("filterRule", "filter rule", false, s => s.FilterRule is { } r ? Kebab(r) : null, t => Choice<FilterRule>(t, r => new() { FilterRule = r })),
-        Number("filterThreshold", "threshold", false, s => s.FilterThreshold, v => new() { FilterThreshold = v }),
+        Number("filterThreshold", "threshold", false, s => s.FilterThreshold, v => new() { FilterThreshold = v }) with { Power = true },
         Count("historySteps", "history, steps", false, s => s.HistorySteps, v => new() { HistorySteps = v }),
         Count("predictorOrder", "predictor order", false, s => s.PredictorOrder, v => new() { PredictorOrder = v }),
         Count("iterationCap", "iteration cap", true, s => s.IterationCap, v => new() { IterationCap = v }),
-        Number("tolerance", "tolerance", true, s => s.Tolerance, v => new() { Tolerance = v }),
+        Number("tolerance", "tolerance", true, s => s.Tolerance, v => new() { Tolerance = v }) with { Power = true },
         new("surrogate", "surrogate", false, s => s.Surrogate, t => t.Trim().Length == 0 ? null : new() { Surrogate = t.Trim() }),
     ];
 
@@ -36,14 +39,15 @@ public sealed record SettingKind(string Name, string Words, bool AltersResult, F
     public string Shown(CouplingSettings settings) => Get(settings) switch
     {
         null => "not declared",
-        var text when !Whole && double.TryParse(text, NumberStyles.Float, CultureInfo.InvariantCulture, out var v) => Exact(v),
+        var text when !Whole && double.TryParse(text, NumberStyles.Float, CultureInfo.InvariantCulture, out var v) => Exact(v, Power),
         var text => text,
     };
 
     /// <summary>A number to its last digit: "0.1", "2.5 × 10⁻⁵", "10⁻⁷".</summary>
-    public static string Exact(double value)
+    /// <param name="power">As a power of ten even where it is not small.</param>
+    public static string Exact(double value, bool power = false)
     {
-        if (!(Math.Abs(value) is > 0 and < 1e-3)) return value.ToString("R", CultureInfo.InvariantCulture);
+        if (value == 0 || !double.IsFinite(value) || (!power && Math.Abs(value) >= 1e-3)) return value.ToString("R", CultureInfo.InvariantCulture);
         var digits = 1;
         while (digits < 15 && double.Parse(value.ToString("E" + (digits - 1), CultureInfo.InvariantCulture), CultureInfo.InvariantCulture) != value) digits++;
         return Numbers.Power(value, digits);
