@@ -1,3 +1,4 @@
+using CouplingWatch.Numerics.Trials;
 using CouplingWatch.Records;
 using CouplingWatch.Wire;
 
@@ -6,6 +7,9 @@ namespace CouplingWatch.Monitoring.Race;
 /// <summary>How a race ends, and what becomes of its winner.</summary>
 public sealed partial class GuardedRace
 {
+    /// <summary>With fewer rounds than allow it no interval is given; five rounds allow 93.75 %.</summary>
+    private const double LeastConfidence = 0.9;
+
     private int watched;
     private int watchedCount;
     private double watchedSum;
@@ -53,8 +57,10 @@ public sealed partial class GuardedRace
     private RaceEffect? Effect(ArmState? arm)
     {
         if (arm is null) return null;
-        var paired = PairedEffect.Of(arm.DifferencesTo(arms[0]));
-        return new RaceEffect(arm.Index, paired.Mean, paired.Low, paired.High, paired.Level, paired.Pairs, arms.Count - 1);
+        var common = arm.Scores.Keys.Where(arms[0].Scores.ContainsKey).ToArray();
+        var paired = PermutationInterval.Of([.. common.Select(r => arms[0].Scores[r])], [.. common.Select(r => arm.Scores[r])], LeastConfidence);
+        var bounded = paired.Confidence >= LeastConfidence && double.IsFinite(paired.Low);
+        return new RaceEffect(arm.Index, paired.Effect, bounded ? paired.Low : null, bounded ? paired.High : null, bounded ? paired.Confidence : null, paired.Rounds, arms.Count - 1);
     }
 
     private string Interval(RaceEffect? effect) => effect is not { Low: { } low, High: { } high, Level: { } level }

@@ -1,3 +1,4 @@
+using CouplingWatch.Monitoring.Statistics;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring.Race;
@@ -19,17 +20,10 @@ internal sealed record RaceBaseline(double Mean, double Quantile90, double Limit
             if (!judged[i].Converged) cap ??= judged[i].Count;
         }
         Array.Sort(counts);
-        var p90 = Quantile(counts, 0.9);
+        var p90 = Robust.Quantile(counts, 0.9);
         return new RaceBaseline(
             sum / counts.Length, p90, Math.Max(options.GuardFactor * p90, p90 + options.GuardMargin), cap,
             cap is { } most && p90 >= most - 1e-9, double.IsNaN(seconds) ? null : seconds / counts.Length);
-    }
-
-    private static double Quantile(double[] sorted, double p)
-    {
-        var at = (sorted.Length - 1) * p;
-        var below = (int)at;
-        return below + 1 >= sorted.Length ? sorted[^1] : sorted[below] + (at - below) * (sorted[below + 1] - sorted[below]);
     }
 
     public RaceGuard View => new(Limit, Quantile90, Mean, Cap, AtCap);
