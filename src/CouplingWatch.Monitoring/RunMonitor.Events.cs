@@ -37,6 +37,9 @@ public sealed partial class RunMonitor
                 settings.PickedUp(e.Revision);
                 changes.Add(new Change(ChangeKind.Settings, e.Revision.ToString(CultureInfo.InvariantCulture)));
                 break;
+            case DismissedEvent e:
+                if (advice.Dismiss(e.AdviceId)) changes.Add(new Change(ChangeKind.Advice));
+                break;
             default:
                 if (AlertEvents.Apply(alerts, serverEvent) is { } alert) changes.Add(new Change(ChangeKind.Alert, alert));
                 break;

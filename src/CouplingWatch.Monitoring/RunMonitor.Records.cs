@@ -87,6 +87,7 @@ public sealed partial class RunMonitor
         if (state.Steady) alerts.SteadyIteration(findings, state.Seq, changes);
         Report();
         changes.Add(new Change(ChangeKind.Iteration));
+        RenewAdvice(false);
     }
 
     private void Begin(IterationRecord record, int attempt)
@@ -178,6 +179,7 @@ public sealed partial class RunMonitor
         }
         foreach (var listener in listeners) listener.StepClosed(state, closed);
         findings.Clear();
+        RenewAdvice(true);
         changes.Add(new Change(ChangeKind.Step));
         changes.Add(new Change(ChangeKind.Verdict));
     }
@@ -227,6 +229,7 @@ public sealed partial class RunMonitor
         state.Learning.Restart(since);
         state.ForgetHistory();
         alerts.SettingsChanged();
+        advice.SettingsChanged();
         foreach (var check in checks) check.Restart(state, cause);
     }
 
@@ -247,9 +250,21 @@ public sealed partial class RunMonitor
         var step = state.Step;
         var place = new Place(step.Step, step.Iteration, state.Seq, state.At, step.Ordinal);
         var held = state.SendsAttempts && step.InProgress;
-        foreach (var finding in findings) alerts.Report(finding, place, held, changes);
+        foreach (var finding in findings)
+        {
+            if (finding.Check is CheckIds.NoiseFloor or CheckIds.Polluted) state.Basis.Taint(step.Ordinal);
+            alerts.Report(finding, place, held, changes);
+        }
         alerts.Relate(step.Ordinal);
         findings.Clear();
+    }
+
+    /// <summary>Advice follows the alerts; a step may bring the standing one.</summary>
+    private void RenewAdvice(bool stepClosed)
+    {
+        if (!stepClosed && !changes.Exists(c => c.Kind == ChangeKind.Alert)) return;
+        if (state.Ended) return;
+        advice.Renew(state, alerts, checks, changes);
     }
 
     private static double Mean(Window counts)

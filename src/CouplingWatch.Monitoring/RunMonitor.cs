@@ -1,5 +1,8 @@
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Alerts;
+using CouplingWatch.Monitoring.Basis;
 using CouplingWatch.Monitoring.Checks;
+using CouplingWatch.Monitoring.Spectrum;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Records;
 using CouplingWatch.Wire;
@@ -12,6 +15,7 @@ public sealed partial class RunMonitor
     private readonly RunState state;
     private readonly SettingsBook settings = new();
     private readonly AlertBook alerts;
+    private readonly AdviceBook advice;
     private readonly ICheck[] checks;
     private readonly IRunListener[] listeners;
     private readonly List<Finding> findings = [];
@@ -28,6 +32,7 @@ public sealed partial class RunMonitor
         Options.Validate();
         state = new RunState(run);
         alerts = new AlertBook(run);
+        advice = new AdviceBook(run);
         checks = CheckList.All(Options);
         listeners = [];
     }
@@ -57,9 +62,12 @@ public sealed partial class RunMonitor
 
     public RunDetail Detail(DateTimeOffset now) => throw new NotImplementedException();
 
-    public BasisView? Basis(int? step = null, int? iteration = null, FilterRule? rule = null, double? threshold = null) => null;
+    /// <summary>The secant basis after an iteration (the latest when null), also under another rule or threshold; null when it is not known or no longer kept.</summary>
+    /// <exception cref="ArgumentOutOfRangeException">The threshold does not lie in 0 ≤ ε &lt; 1.</exception>
+    public BasisView? Basis(int? step = null, int? iteration = null, FilterRule? rule = null, double? threshold = null) => BasisQuery.Ask(state, step, iteration, rule, threshold);
 
-    public SpectrumView? Spectrum() => null;
+    /// <summary>Ritz values of the pass on the directions seen; null without vectors.</summary>
+    public SpectrumView? Spectrum() => PassSpectrum.View(state);
 
     /// <summary>Per-step summaries of [from, to], thinned to at most <paramref name="points"/> groups without losing extremes.</summary>
     public IReadOnlyList<StripBar> Steps(int? from, int? to, int points) => throw new NotImplementedException();
@@ -71,7 +79,10 @@ public sealed partial class RunMonitor
     public IReadOnlyList<Alert> Alerts => alerts.All;
 
     /// <summary>The advice that stands now.</summary>
-    public IReadOnlyList<Advice> Advice => [];
+    public IReadOnlyList<Advice> Advice => advice.Standing;
+
+    /// <summary>All advice given so far, the one that no longer stands included, in order of seq: what a post-mortem asks for.</summary>
+    public IReadOnlyList<Advice> AdviceGiven => advice.Given;
 
     /// <summary>The checks that cannot judge with what this run sends, in the order of the list of checks.</summary>
     public IReadOnlyList<NotJudged> NotJudged

@@ -1,3 +1,4 @@
+using System.Globalization;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Records;
 
@@ -14,11 +15,17 @@ internal static class AdvisedThreshold
     public const double PivotRatioMost = 1e-4;
 
     /// <summary>ε₀ of a rule; the largest declared noise decides.</summary>
-    public static double Of(RunState run, FilterRule rule) => (rule, run.DeclaredNoise) switch
+    public static double Of(RunState run, FilterRule rule) => Of(run.DeclaredNoise, rule);
+
+    /// <param name="noise">Largest declared solver noise; null when none is declared.</param>
+    public static double Of(double? noise, FilterRule rule) => (rule, noise) switch
     {
-        (FilterRule.PivotRatio, { } noise) => Math.Min(PivotRatioTimesNoise * noise, PivotRatioMost),
+        (FilterRule.PivotRatio, { } tau) => Math.Min(Plain(PivotRatioTimesNoise * tau), PivotRatioMost),
         (FilterRule.PivotRatio, null) => PivotRatioUndeclared,
-        (_, { } noise) => Math.Min(OwnNormTimesNoise * noise, OwnNormMost),
+        (_, { } tau) => Math.Min(Plain(OwnNormTimesNoise * tau), OwnNormMost),
         _ => OwnNormUndeclared,
     };
+
+    /// <summary>100 · 1e-6 is to read 1e-4, not 9.999999999999999e-5.</summary>
+    private static double Plain(double value) => double.Parse(value.ToString("G12", CultureInfo.InvariantCulture), CultureInfo.InvariantCulture);
 }

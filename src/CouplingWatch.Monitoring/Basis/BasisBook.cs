@@ -6,7 +6,10 @@ namespace CouplingWatch.Monitoring.Basis;
 /// <summary>The bases of the run, one a group, and whether its vectors can be stacked at all.</summary>
 internal sealed class BasisBook
 {
+    private const int TaintedKept = 64;
+
     private readonly List<GroupBasis> groups = [];
+    private readonly List<long> tainted = [];
 
     /// <summary>Groups that sent vectors, sketches or reports so far; a single one without a name in most runs.</summary>
     public IReadOnlyList<GroupBasis> Groups => groups;
@@ -26,6 +29,16 @@ internal sealed class BasisBook
 
     /// <summary>Cosine of the stacked residual with the one before it; NaN without vectors of both.</summary>
     public double Cosine { get; private set; } = double.NaN;
+
+    /// <summary>A step that met the noise floor or a polluted basis says nothing of the pass.</summary>
+    public bool IsTainted(long ordinal) => tainted.Contains(ordinal);
+
+    public void Taint(long ordinal)
+    {
+        if (tainted.Contains(ordinal)) return;
+        if (tainted.Count == TaintedKept) tainted.RemoveAt(0);
+        tainted.Add(ordinal);
+    }
 
     public GroupBasis? Find(string? group) => groups.Find(g => g.Group == group);
 

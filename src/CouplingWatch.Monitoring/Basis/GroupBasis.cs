@@ -30,6 +30,11 @@ internal sealed class GroupBasis(string? group)
 
     public bool Sketched { get; private set; }
 
+    /// <summary>What the code reported last in the step in progress, and at which iteration.</summary>
+    public BasisReport? LatestReport { get; private set; }
+
+    public int LatestReportIteration { get; private set; }
+
     /// <summary>Columns are in use that were born before what was sent here (a kept or mapped basis): own filtering cannot be trusted for so many steps.</summary>
     public int ForeignSteps { get; set; }
 
@@ -48,6 +53,7 @@ internal sealed class GroupBasis(string? group)
     public void BeginStep()
     {
         updates.Clear();
+        LatestReport = null;
         FirstNorm = LowestNorm = double.NaN;
     }
 
@@ -82,6 +88,7 @@ internal sealed class GroupBasis(string? group)
         if (Latest is { } before && before.Iteration == run.Step.Iteration - 1 && before.Norm > 0) before.Came = norm / before.Norm;
         if (double.IsNaN(FirstNorm)) FirstNorm = norm;
         LowestNorm = double.IsNaN(LowestNorm) ? norm : Math.Min(LowestNorm, norm);
+        if (report is not null) (LatestReport, LatestReportIteration) = (report, run.Step.Iteration);
         var facts = UpdateJudge.Judge(this, run, report, norm, relaxed, surrogate);
         if (facts is null) return;
         if (updates.Count == UpdatesKept) updates.RemoveAt(0);

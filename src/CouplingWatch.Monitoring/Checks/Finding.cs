@@ -47,6 +47,9 @@ internal static class CheckIds
         return rank < 0 ? Order.Length : rank;
     }
 
+    /// <summary>Whose advice comes first: as the causes, but where secants are used a broken basis is what a divergence is cured by.</summary>
+    public static int AdviceRank(string check, bool secants) => secants && check == Divergence ? Rank(Oscillation) : Rank(check);
+
     /// <summary>It can be what lies behind a later one of the order.</summary>
     public static bool Explains(string check) => check is not (FalseClaim or Silent or Capped or Hang or Drift or UnequalFields);
 

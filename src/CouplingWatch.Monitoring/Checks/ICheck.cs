@@ -1,3 +1,4 @@
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Wire;
 
@@ -21,6 +22,11 @@ internal interface ICheck
 
     /// <summary>Something changed that earlier steps do not compare with.</summary>
     void Restart(RunState run, RestartCause cause)
+    {
+    }
+
+    /// <summary>What would answer an open alert of this check, best first.</summary>
+    void Advise(RunState run, Alert alert, List<Move> moves)
     {
     }
 

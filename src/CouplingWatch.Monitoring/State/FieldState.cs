@@ -35,6 +35,9 @@ internal sealed class FieldState(FieldDeclaration declared)
     /// <summary>True when the tolerance is inferred from what the code accepted before.</summary>
     public bool Inferred { get; private set; }
 
+    /// <summary>A tolerance that the run declared was known at least once.</summary>
+    public bool DeclaredTolerance { get; private set; }
+
     private double firstResidual = double.NaN;
     private double previousStepLast = double.NaN;
     private readonly Window acceptedResiduals = new(InferredFrom);
@@ -62,6 +65,7 @@ internal sealed class FieldState(FieldDeclaration declared)
         if (double.IsNaN(firstResidual)) firstResidual = residual;
         if (record.Magnitudes is { } magnitudes && magnitudes.TryGet(Name, out var magnitude)) Magnitude = magnitude;
         Tolerance = ToleranceOf(record);
+        DeclaredTolerance |= Tolerance is not null && !Inferred;
         Need = Tolerance is { } tolerance ? Decades.Log(residual) - Decades.Log(tolerance) : null;
         if (Need > 0 || double.IsNaN(residual)) Late = record.Iteration + 1;
     }

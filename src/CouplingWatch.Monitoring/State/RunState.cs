@@ -129,7 +129,10 @@ internal sealed class RunState(string run)
     public double? RelaxationSent { get; set; }
 
     /// <summary>Largest and best fixed relaxation on the directions seen, else from the growth of the residual; null when neither is known.</summary>
-    public RelaxationLimit? RelaxationLimit => RelaxationLimit.FromGrowth(this);
+    /// <remarks>For the judgement only: pages work the spectrum out for themselves.</remarks>
+    public RelaxationLimit? RelaxationLimit => relaxations.Of(this);
+
+    private readonly RelaxationMemory relaxations = new();
 
     /// <summary>Largest declared solver noise; null when none is declared.</summary>
     public double? DeclaredNoise

@@ -1,5 +1,8 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
+using CouplingWatch.Monitoring.Forecast;
 using CouplingWatch.Monitoring.State;
+using CouplingWatch.Monitoring.Statistics;
 using CouplingWatch.Monitoring.Wording;
 using CouplingWatch.Records;
 using CouplingWatch.Wire;
@@ -15,6 +18,24 @@ internal sealed class CappedCheck : ICheck
     {
         if (step.Outcome == StepOutcome.Capped) findings.Add(Capped(step));
         if (step.Unconverged && run.UnconvergedInARow >= 2) findings.Add(Unconverged(run, step));
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check is not (CheckIds.Capped or CheckIds.UnconvergedRun) || alert.Cause is not null) return;
+        if (Moves.HistoryUp(run) is { } history) moves.Add(history);
+        if (Moves.ToQuasiNewton(run) is { } method) moves.Add(method);
+        if (run.Settings.IterationCap is { } cap && EnoughFor(run, cap) is { } enough) moves.Add(Moves.CapUp(run, enough));
+    }
+
+    /// <summary>The cap that the rate of the last step asks for, at most three times the present one; null when that rate leads nowhere.</summary>
+    private static int? EnoughFor(RunState run, int cap)
+    {
+        if (run.Step.Need is not { } need || need <= 0) return null;
+        var slope = Robust.Slope(run.Step.Z, StepForecaster.RateWindow).Slope;
+        if (!(slope < -StepForecaster.LeastFall)) return null;
+        var more = need / -slope;
+        return more > 2 * cap ? null : cap + (int)Math.Ceiling(more) + 1;
     }
 
     private static Finding Capped(in ClosedStep step)

@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Statistics;
 using CouplingWatch.Monitoring.Wording;
@@ -26,6 +27,20 @@ internal sealed class DivergenceCheck(DivergenceOptions options) : ICheck
         findings.Add(new Finding(Id, Severity.Critical,
             $"The code gave up on step {step.Step} after {Say.Count(step.Iterations, "iteration", "iterations")}; its last residual norm is {Say.Number(step.LastNorm)}.",
             evidence, Certain: true));
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (run.UsesSecants)
+        {
+            if (run.StepsConverged > 0 && Moves.TimeStepDown(run) is { } timeStep) moves.Add(timeStep);
+            if (run.StepsConverged > 0 && Moves.DropHistory(run) is { } drop) moves.Add(drop);
+            return;
+        }
+        if (Moves.RelaxationDown(run) is { } relaxation) moves.Add(relaxation);
+        if (Moves.ToQuasiNewton(run) is { } method) moves.Add(method);
+        if (run.StepsConverged > 0 && Moves.TimeStepDown(run) is { } smaller) moves.Add(smaller);
     }
 
     private bool Grows(StepState step, out double slope)

@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Wording;
 using CouplingWatch.Records;
@@ -34,10 +35,22 @@ internal sealed class FalseClaimCheck(FalseClaimOptions options) : ICheck
             evidence));
     }
 
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        moves.Add(new Move
+        {
+            Setting = "tolerance",
+            Direction = "change",
+            AltersResult = true,
+            Text = "let the code stop on the tolerance it declares, or declare the one it stops on",
+        });
+    }
+
     public NotJudged? Lacks(RunState run)
     {
         foreach (var field in run.Fields.All)
-            if (field.Sent && !field.Inferred && field.Tolerance is not null) return null;
+            if (field.DeclaredTolerance) return null;
         return run.Iterations == 0 ? null : new NotJudged(Id, "the tolerance is only inferred from what the code accepted before", "magnitudes with each iteration, or targets");
     }
 }

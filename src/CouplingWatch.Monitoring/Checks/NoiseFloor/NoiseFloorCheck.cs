@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Checks.Progress;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Wording;
@@ -29,5 +30,13 @@ internal sealed class NoiseFloorCheck(ProgressOptions options) : ICheck
             text += $"; {run.NoisiestSolver} declares a noise of {Say.Power(noise)}";
         }
         findings.Add(new Finding(Id, Severity.Warning, text + ".", evidence));
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        var above = alert.Evidence["timesAboveTarget"]?.GetValue<double>() ?? 1;
+        moves.Add(Moves.SolverNoiseDown(run, above));
+        moves.Add(Moves.ToleranceUp(run, above));
     }
 }

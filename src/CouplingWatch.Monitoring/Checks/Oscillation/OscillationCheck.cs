@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Basis;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Statistics;
@@ -57,6 +58,13 @@ internal sealed class OscillationCheck(OscillationOptions options) : ICheck
             }
         }
         findings.Add(new Finding(Id, Severity.Warning, text + ".", evidence));
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (Moves.RelaxationDown(run) is { } relaxation) moves.Add(relaxation);
+        if (Moves.ToQuasiNewton(run) is { } method) moves.Add(method);
     }
 
     public NotJudged? Lacks(RunState run) => run.Settings.Method == CouplingMethod.Fixed ? BasisLack.OfVectors(run, Id) : null;

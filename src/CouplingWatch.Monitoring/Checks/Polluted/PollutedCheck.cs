@@ -1,7 +1,9 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Basis;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Wording;
+using CouplingWatch.Records;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring.Checks.Polluted;
@@ -48,6 +50,15 @@ internal sealed class PollutedCheck(PollutedOptions options) : ICheck
             findings.Add(Polluted(group, broken));
             return;
         }
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (run.Settings.FilterRule == FilterRule.None && Moves.ToOwnNorm(run) is { } rule) moves.Add(rule);
+        if (Moves.Threshold(run, up: true) is { } threshold) moves.Add(threshold);
+        if (Moves.DropHistory(run) is { } drop) moves.Add(drop);
+        if (moves.Count == 0 || (moves.Count == 1 && moves[0].Setting == "dropHistory")) moves.Insert(0, Moves.SolverNoiseDown(run, 1));
     }
 
     public NotJudged? Lacks(RunState run) => BasisLack.Of(run, Id);

@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Checks.Progress;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Statistics;
@@ -35,5 +36,13 @@ internal sealed class SlowCheck(ProgressOptions options) : ICheck
             }
         }
         findings.Add(new Finding(Id, Severity.Warning, text + ".", evidence));
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (Moves.RelaxationToBest(run) is { } relaxation) moves.Add(relaxation);
+        if (Moves.ToQuasiNewton(run) is { } method) moves.Add(method);
+        if (alert.Cause is null && Moves.HistoryUp(run) is { } history) moves.Add(history);
     }
 }

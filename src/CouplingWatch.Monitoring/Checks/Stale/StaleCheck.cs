@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Basis;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Statistics;
@@ -55,6 +56,14 @@ internal sealed class StaleCheck(StaleOptions options) : ICheck
     {
         recent = (recent << 1) | (noted ? 1UL : 0);
         if (!double.IsNaN(run.Step.FirstIncrement) && step.Complete) increments.Add(run.Step.FirstIncrement);
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (Moves.DropHistory(run) is { } drop) moves.Add(drop);
+        if (Moves.HistoryDown(run) is { } fewer) moves.Add(fewer);
+        if (run.StepsCapped > 0 && Moves.TimeStepDown(run) is { } timeStep) moves.Add(timeStep);
     }
 
     public NotJudged? Lacks(RunState run) => null;

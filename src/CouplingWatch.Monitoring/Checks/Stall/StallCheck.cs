@@ -1,7 +1,9 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Checks.Progress;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Wording;
+using CouplingWatch.Records;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring.Checks.Stall;
@@ -25,7 +27,26 @@ internal sealed class StallCheck(ProgressOptions options) : ICheck
         };
         var text = progress.Alternates
             ? $"The residual changes sign at each iteration and gained {Say.Number(Math.Max(0, progress.Improvement))} decades in the last {StepState.ProgressWindow}"
-            : $"The residual is no lower than {StepState.ProgressWindow} iterations ago and only {Say.Number(Math.Pow(10, step.FirstZ - step.LowestZ))} times lower at best than at the start of the step";
+            : $"The residual makes no progress for {StepState.ProgressWindow} iterations and {Fell(step)}";
         findings.Add(new Finding(Id, Severity.Warning, text + ".", evidence));
+    }
+
+    private static string Fell(StepState step) => step.FirstZ - step.LowestZ < 0.05
+        ? "was never lower than at the start of the step"
+        : $"was {Say.Number(Math.Pow(10, step.FirstZ - step.LowestZ))} times lower at best than at the start of the step";
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (alert.Cause is not null) return;
+        if (run.Settings.Method == CouplingMethod.Fixed)
+        {
+            if (Moves.RelaxationDown(run) is { } relaxation) moves.Add(relaxation);
+            if (Moves.ToQuasiNewton(run) is { } method) moves.Add(method);
+        }
+        else if (Moves.DropHistory(run) is { } drop)
+        {
+            moves.Add(drop);
+        }
     }
 }

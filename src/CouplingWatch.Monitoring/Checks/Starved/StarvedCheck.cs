@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.Basis;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Wording;
@@ -56,6 +57,13 @@ internal sealed class StarvedCheck(StarvedOptions options) : ICheck
             findings.Add(Starved(group, latest, newest >= options.Updates ? newest : many, newest >= options.Updates));
             return;
         }
+    }
+
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (Moves.Threshold(run, up: false) is { } threshold) moves.Add(threshold);
+        if (run.Settings.FilterRule == FilterRule.PivotRatio && Moves.ToOwnNorm(run) is { } rule) moves.Add(rule);
     }
 
     public NotJudged? Lacks(RunState run) => BasisLack.Of(run, Id);

@@ -1,4 +1,5 @@
 using System.Text.Json.Nodes;
+using CouplingWatch.Monitoring.Advising;
 using CouplingWatch.Monitoring.State;
 using CouplingWatch.Monitoring.Statistics;
 using CouplingWatch.Monitoring.Wording;
@@ -50,8 +51,32 @@ internal sealed class UnequalFieldsCheck(UnequalFieldsOptions options) : ICheck
         if (late[0].Count >= options.LeastSteps) Judge(fields, findings);
     }
 
+    public void Advise(RunState run, Alert alert, List<Move> moves)
+    {
+        if (alert.Check != Id) return;
+        if (alert.Evidence["field"]?.GetValue<string>() is not { } late || alert.Evidence["other"]?.GetValue<string>() is not { } early) return;
+        moves.Add(Weigh(run, late, early));
+    }
+
     public NotJudged? Lacks(RunState run) => run.Fields.Unknowns.Count >= 2 && run.Iterations > 0 && !run.Step.NeedsKnown
         ? new NotJudged(Id, "the tolerance of a field is unknown", "magnitudes with each iteration, or targets") : null;
+
+    /// <summary>The weight that brings the outputs of the two fields to the same size.</summary>
+    private static Move Weigh(RunState run, string late, string early)
+    {
+        var (slow, quick) = (run.Fields.Find(late), run.Fields.Find(early));
+        double? value = slow?.Magnitude > 0 && quick?.Magnitude > 0 ? quick.Weight * quick.Magnitude / slow.Magnitude : null;
+        return new Move
+        {
+            Setting = "weight",
+            Direction = "change",
+            Field = late,
+            From = slow is null ? null : slow.Weight.ToString("R", System.Globalization.CultureInfo.InvariantCulture),
+            Value = value,
+            Text = $"scale the fields before stacking: weigh {late} {(value is { } v ? $"by {Say.Number(v)} " : "")}so that it counts like {early}",
+            Caveat = "the weights of the code's least squares, not its tolerances",
+        };
+    }
 
     private void Judge(IReadOnlyList<FieldState> fields, List<Finding> findings)
     {
