@@ -59,6 +59,18 @@ public sealed class SmallMatrix
         return result;
     }
 
+    /// <summary>A square upper triangular matrix from its entries packed by columns: R₀₀, R₀₁, R₁₁, R₀₂, …</summary>
+    /// <param name="packed">n(n + 1)/2 entries for a triangle of n columns.</param>
+    /// <exception cref="ArgumentException">No whole triangle has that many entries.</exception>
+    public static SmallMatrix FromPackedTriangle(ReadOnlySpan<double> packed)
+    {
+        int size = (int)((Math.Sqrt((8.0 * packed.Length) + 1) - 1) / 2);
+        if (size * (size + 1) / 2 != packed.Length) throw new ArgumentException($"{packed.Length} entries are no packed triangle", nameof(packed));
+        var result = new SmallMatrix(size, size);
+        for (int j = 0, start = 0; j < size; start += ++j) packed.Slice(start, j + 1).CopyTo(result.Column(j));
+        return result;
+    }
+
     /// <summary>The identity of a size.</summary>
     public static SmallMatrix Identity(int size)
     {

@@ -52,13 +52,19 @@ public sealed class RitzValues
     /// <summary>At least <see cref="DirectionsNeeded"/> directions were kept.</summary>
     public bool EnoughDirections => Kept >= DirectionsNeeded;
 
-    /// <summary>ω_max = 2/(1 − λ_min): fixed relaxation converges below it. Null when too few directions, complex values or λ_min ≥ 1.</summary>
-    public double? RelaxationLimit => Advisable ? 2 / (1 - Smallest) : null;
+    /// <summary>2/(1 − λ_min) from the real parts alone, for showing; NaN without values or when λ_min ≥ 1.</summary>
+    public double LimitOfRealParts => Smallest < 1 ? 2 / (1 - Smallest) : double.NaN;
 
-    /// <summary>ω_opt = 2/(2 − λ_min − λ_max). Null when no limit is named, or the largest value is 1 or more.</summary>
-    public double? RelaxationOptimum => Advisable && Largest < 1 ? 2 / (2 - Smallest - Largest) : null;
+    /// <summary>2/(2 − λ_min − λ_max) from the real parts alone, for showing; NaN without values or when λ_max ≥ 1.</summary>
+    public double OptimumOfRealParts => Largest < 1 ? 2 / (2 - Smallest - Largest) : double.NaN;
 
-    private bool Advisable => EnoughDirections && ImaginaryShare <= ImaginaryShareAllowed && Smallest < 1;
+    /// <summary>ω_max = 2/(1 − λ_min): fixed relaxation converges below it. Null when it must not be advised: too few directions, complex values or λ_min ≥ 1.</summary>
+    public double? RelaxationLimit => Advisable && Smallest < 1 ? LimitOfRealParts : null;
+
+    /// <summary>ω_opt = 2/(2 − λ_min − λ_max). Null when it must not be advised, as above, or when λ_max ≥ 1.</summary>
+    public double? RelaxationOptimum => Advisable && Largest < 1 ? OptimumOfRealParts : null;
+
+    private bool Advisable => EnoughDirections && ImaginaryShare <= ImaginaryShareAllowed;
 
     /// <summary>Ritz values of the newest pairs.</summary>
     /// <param name="d">Changes of the input, in order of arrival (oldest first), vectors of one length. Zero or not finite pairs do not count.</param>
