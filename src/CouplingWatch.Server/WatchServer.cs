@@ -54,19 +54,25 @@ public static class WatchServer
     }
 
     /// <summary>Creates, runs until stopped, and answers the exit code: 0, or 1 with one line on standard error when it could not start.</summary>
-    public static async Task<int> RunAsync(string[] args, Action<WatchServerOptions>? configure = null, Action<WebApplicationBuilder>? build = null)
+    public static Task<int> RunAsync(string[] args, Action<WatchServerOptions>? configure = null, Action<WebApplicationBuilder>? build = null) =>
+        RunAsync(args, configure, build, Console.Error);
+
+    internal static async Task<int> RunAsync(string[] args, Action<WatchServerOptions>? configure, Action<WebApplicationBuilder>? build, TextWriter error)
     {
         try
         {
             await using var app = Create(args, configure, build);
             try { await app.StartAsync(); }
-            catch (IOException e) when (e.InnerException is AddressInUseException or SocketException) { throw new StartException($"--urls: {e.Message}", e); }
+            catch (IOException e) when (e.InnerException is AddressInUseException or SocketException)
+            {
+                throw new StartException($"--urls {string.Join(';', app.Urls)}: {e.Message} Choose another port, for example --urls http://localhost:5081.", e);
+            }
             await app.WaitForShutdownAsync();
             return 0;
         }
         catch (StartException e)
         {
-            await Console.Error.WriteLineAsync(e.Message);
+            await error.WriteLineAsync(e.Message);
             return 1;
         }
     }

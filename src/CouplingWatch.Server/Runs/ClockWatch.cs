@@ -1,7 +1,7 @@
 namespace CouplingWatch.Server.Runs;
 
 /// <summary>Has every run look at the clock now and then: silence begins without a record.</summary>
-internal sealed class ClockWatch(RunRegistry runs, TimeProvider time, ILogger<ClockWatch> log) : BackgroundService
+internal sealed class ClockWatch(RunRegistry runs, TimeProvider time) : BackgroundService
 {
     /// <summary>How late a silence may be seen; its shortest limit is a minute.</summary>
     public static readonly TimeSpan Interval = TimeSpan.FromSeconds(5);
@@ -13,11 +13,7 @@ internal sealed class ClockWatch(RunRegistry runs, TimeProvider time, ILogger<Cl
         {
             while (await timer.WaitForNextTickAsync(stoppingToken))
             {
-                foreach (var host in runs.All)
-                {
-                    try { await host.LookAtClockAsync(stoppingToken); }
-                    catch (Exception e) when (e is not OperationCanceledException) { log.LogWarning(e, "Run {Run}: what its clock says could not be written down", host.Run); }
-                }
+                foreach (var host in runs.All) host.LookAtClock();
             }
         }
         catch (OperationCanceledException) when (stoppingToken.IsCancellationRequested)

@@ -6,16 +6,32 @@ namespace CouplingWatch.Server.Runs;
 
 internal sealed partial class RunHost
 {
-    /// <summary>Looks at the clock: a silence that began, a shelf that ran out. Cheap when there is nothing.</summary>
-    public Task LookAtClockAsync(CancellationToken cancel = default) => QueueAsync(async () =>
+    private int clockWaits;
+
+    /// <summary>Looks at the clock when its turn comes: a silence that began, a shelf that ran out. Does not wait; at most one look waits.</summary>
+    public void LookAtClock()
+    {
+        if (Interlocked.Exchange(ref clockWaits, 1) == 1) return;
+        _ = LookAsync();
+
+        async Task LookAsync()
+        {
+            try { await QueueAsync(LookNowAsync, CancellationToken.None); }
+            catch (Exception e) { log.LogWarning(e, "Run {Run}: what its clock says could not be written down", Run); }
+            finally { Volatile.Write(ref clockWaits, 0); }
+        }
+    }
+
+    private async ValueTask<bool> LookNowAsync()
     {
         if (judge is null) return false;
         var now = around.Now();
-        if (!Closed && signs.BeginningOfSilence(judge.Ask(m => m.SilenceLimitSeconds, null), now) is { } silent) await CommitAsync(silent, cancel);
+        if (!Closed && signs.BeginningOfSilence(judge.Ask(m => m.SilenceLimitSeconds, null), judge.Ask(m => m.BeatLimitSeconds, null), now) is { } silent)
+            await CommitAsync(silent, CancellationToken.None);
         foreach (var alert in judge.Ask<IReadOnlyList<Alert>>(m => [.. m.Alerts.Where(a => a.State == AlertState.Shelved && a.ShelvedUntil <= now)], []))
-            await CommitAsync(new UnshelvedEvent(alert.Id, Clock) { At = now }, cancel);
+            await CommitAsync(new UnshelvedEvent(alert.Id, Clock) { At = now }, CancellationToken.None);
         return true;
-    }, cancel);
+    }
 
     /// <summary>Who stands in an event that nobody but the clock caused.</summary>
     public const string Clock = "clock";

@@ -43,7 +43,7 @@ internal sealed partial class RunHost
         {
             if (incoming.Record.Seq < 0)
             {
-                if (incoming.Record is BeatRecord beat && signs.Beat(beat, now) is { } hang) Tell(null, await JournalAndJudgeAsync(hang));
+                if (incoming.Record is BeatRecord beat && signs.Beat(beat, HangLimit, now) is { } hang) Tell(null, await JournalAndJudgeAsync(hang));
                 continue;
             }
             sequence.Committed(incoming.Record, incoming.Digest, instance);
@@ -144,6 +144,8 @@ internal sealed partial class RunHost
 
     private static JournalEntry EntryOf(ServerEvent serverEvent, long order) =>
         new(order, JournalEntryKind.Event, -1, serverEvent.At, JsonSerializer.SerializeToUtf8Bytes(serverEvent, WireJson.Options), default);
+
+    private double HangLimit(string solver) => judge!.Ask(m => m.HangLimitSeconds(solver), double.PositiveInfinity);
 
     private void Tell(StreamRecord? record, IReadOnlyList<Change> changes) => around.Audience.Hear(this, judge!, record, changes);
 }
