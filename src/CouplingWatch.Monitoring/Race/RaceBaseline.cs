@@ -1,4 +1,4 @@
-using CouplingWatch.Monitoring.Statistics;
+using CouplingWatch.Numerics.Sequences;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring.Race;
@@ -20,7 +20,7 @@ internal sealed record RaceBaseline(double Mean, double Quantile90, double Limit
             if (!judged[i].Converged) cap ??= judged[i].Count;
         }
         Array.Sort(counts);
-        var p90 = Robust.Quantile(counts, 0.9);
+        var p90 = Quantile.OfSorted(counts, 0.9);
         return new RaceBaseline(
             sum / counts.Length, p90, Math.Max(options.GuardFactor * p90, p90 + options.GuardMargin), cap,
             cap is { } most && p90 >= most - 1e-9, double.IsNaN(seconds) ? null : seconds / counts.Length);
