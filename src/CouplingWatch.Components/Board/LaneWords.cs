@@ -40,11 +40,14 @@ public static class LaneWords
     public static (string Lead, string Tail) Split(string text)
     {
         ArgumentNullException.ThrowIfNull(text);
-        var at = text.AsSpan().IndexOfAny("(,:;");
-        if (at > 0 && text[at] == '(') at--;
-        var stop = text.IndexOf(". ", StringComparison.Ordinal);
-        if (stop >= 0 && (at < 0 || stop < at)) at = stop + 1;
-        if (at > 0) return (text[..at], text[at..]);
+        for (var i = 1; i < text.Length - 1; i++)
+        {
+            // A colon inside a time or a comma inside a number ends no clause.
+            if (text[i] == ' ' && text[i + 1] == '(') return (text[..i], text[i..]);
+            if (text[i + 1] != ' ') continue;
+            if (text[i] is ',' or ':' or ';') return (text[..i], text[i..]);
+            if (text[i] == '.') return (text[..(i + 1)], text[(i + 1)..]);
+        }
         return text.EndsWith('.') ? (text[..^1], ".") : (text, "");
     }
 

@@ -24,6 +24,12 @@ public interface IWatchFeed
 
     Task<bool> AcknowledgeAsync(string alertId, CancellationToken cancel = default);
 
+    /// <summary>Puts an alert aside for some minutes, with a reason; answers null when done, else a sentence for the page.</summary>
+    Task<string?> ShelveAsync(string alertId, int minutes, string reason, CancellationToken cancel = default);
+
+    /// <summary>Takes a shelved alert up again before its time; answers null when done, else a sentence for the page.</summary>
+    Task<string?> UnshelveAsync(string alertId, CancellationToken cancel = default);
+
     /// <summary>Calls back (from any thread, as often as records come; the page throttles) after the board or one run changed. Dispose to stop.</summary>
     IDisposable OnChange(string? run, Action changed);
 

@@ -42,5 +42,11 @@ internal sealed class WatchFeed(RunRegistry runs, ChangeSignals signals, LiveUpd
     public async Task<bool> AcknowledgeAsync(string alertId, CancellationToken cancel = default) =>
         await runs.AcknowledgeAsync(alertId, By, cancel) is null;
 
+    public async Task<string?> ShelveAsync(string alertId, int minutes, string reason, CancellationToken cancel = default) =>
+        (await runs.ShelveAsync(alertId, By, minutes, reason, cancel))?.Detail;
+
+    public async Task<string?> UnshelveAsync(string alertId, CancellationToken cancel = default) =>
+        (await runs.UnshelveAsync(alertId, By, cancel))?.Detail;
+
     public IDisposable OnChange(string? run, Action changed) => signals.Subscribe(run, changed);
 }

@@ -50,13 +50,24 @@ public sealed class HandFeed : IWatchFeed
     public Task<bool> AcknowledgeAsync(string alertId, CancellationToken cancel = default)
     {
         Acknowledged.Add(alertId);
+        return Task.FromResult(Change(alertId, a => a with { State = AlertState.Acknowledged, AcknowledgedBy = "day shift", AcknowledgedAt = LastRecordAt }));
+    }
+
+    public Task<string?> ShelveAsync(string alertId, int minutes, string reason, CancellationToken cancel = default) => Task.FromResult(
+        Change(alertId, a => a with { State = AlertState.Shelved, ShelvedUntil = LastRecordAt?.AddMinutes(minutes), ShelvedReason = reason }) ? null : "There is no such alert.");
+
+    public Task<string?> UnshelveAsync(string alertId, CancellationToken cancel = default) => Task.FromResult(
+        Change(alertId, a => a with { State = AlertState.Unacknowledged, ShelvedUntil = null, ShelvedReason = null }) ? null : "There is no such alert.");
+
+    private bool Change(string id, Func<Alert, Alert> change)
+    {
         lock (gate)
         {
-            var at = Alerts.FindIndex(a => a.Id == alertId);
-            if (at < 0) return Task.FromResult(false);
-            Alerts[at] = Alerts[at] with { State = AlertState.Acknowledged, AcknowledgedBy = "day shift", AcknowledgedAt = LastRecordAt };
+            var at = Alerts.FindIndex(a => a.Id == id);
+            if (at < 0) return false;
+            Alerts[at] = change(Alerts[at]);
+            return true;
         }
-        return Task.FromResult(true);
     }
 
     public IDisposable OnChange(string? run, Action changed)
