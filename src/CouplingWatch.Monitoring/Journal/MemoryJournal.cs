@@ -15,6 +15,7 @@ public sealed class MemoryJournal : IJournal
     public ValueTask AppendAsync(string run, IReadOnlyList<JournalEntry> entries, CancellationToken cancel = default)
     {
         if (Trouble?.Invoke() is { } trouble) return ValueTask.FromException(trouble);
+        if (entries.Count == 0) return ValueTask.CompletedTask;
         lock (gate)
         {
             if (!runs.TryGetValue(run, out var kept)) runs[run] = kept = [];
@@ -46,7 +47,7 @@ public sealed class MemoryJournal : IJournal
         lock (gate)
         {
             return ValueTask.FromResult<IReadOnlyList<JournaledRun>>([.. runs.Select(r => new JournaledRun(
-                r.Key, null, r.Value.Where(e => e.Kind == JournalEntryKind.Record).Select(e => e.Seq + 1).DefaultIfEmpty(0).Max(), r.Value.Count))]);
+                r.Key, r.Value.Select(OpenInstance.Of).FirstOrDefault(i => i is not null), r.Value.Where(e => e.Kind == JournalEntryKind.Record).Select(e => e.Seq + 1).DefaultIfEmpty(0).Max(), r.Value.Count))]);
         }
     }
 
