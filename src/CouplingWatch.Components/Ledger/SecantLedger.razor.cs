@@ -87,6 +87,12 @@ public sealed partial class SecantLedger : IDisposable
     /// <summary>Tries a filter, as a click on the what-if table does.</summary>
     public Task TryAsync(FilterRule other, double value) => Set(other, value, fromText: false, fromSlider: false);
 
+    private void Older()
+    {
+        all = !all;
+        Lay();
+    }
+
     private static int Top(int row) => 20 + row * RowHeight;
 
     private string Place(double power) => Numbers.Plain(100 * (1 - power / Lowest), 2) + "%";
