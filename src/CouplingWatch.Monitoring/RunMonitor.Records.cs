@@ -28,6 +28,7 @@ public sealed partial class RunMonitor
         state.At = record.At ?? received;
         AlertEvents.EndShelving(alerts, received, changes);
         findings.Clear();
+        state.Notes.Clear();
         foreach (var listener in listeners) listener.Record(state, record);
         var gap = record.Seq >= 0 ? state.Cadence.Observe(record.At, received) : null;
         if (record is IterationRecord iteration) OnIteration(iteration, gap);

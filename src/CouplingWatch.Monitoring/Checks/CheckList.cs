@@ -1,6 +1,7 @@
 using CouplingWatch.Monitoring.Checks.Capped;
 using CouplingWatch.Monitoring.Checks.Divergence;
 using CouplingWatch.Monitoring.Checks.Drift;
+using CouplingWatch.Monitoring.Checks.ErrorEstimate;
 using CouplingWatch.Monitoring.Checks.FalseClaim;
 using CouplingWatch.Monitoring.Checks.NoiseFloor;
 using CouplingWatch.Monitoring.Checks.Oscillation;
@@ -8,6 +9,7 @@ using CouplingWatch.Monitoring.Checks.Polluted;
 using CouplingWatch.Monitoring.Checks.Slow;
 using CouplingWatch.Monitoring.Checks.Stale;
 using CouplingWatch.Monitoring.Checks.Stall;
+using CouplingWatch.Monitoring.Checks.Start;
 using CouplingWatch.Monitoring.Checks.Starved;
 using CouplingWatch.Monitoring.Checks.UnequalFields;
 
@@ -30,5 +32,7 @@ internal static class CheckList
         new CappedCheck(),
         new DriftCheck(options.Drift),
         new UnequalFieldsCheck(options.UnequalFields),
+        new StartCheck(),
+        new ErrorEstimateCheck(),
     ];
 }

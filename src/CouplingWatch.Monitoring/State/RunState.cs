@@ -117,7 +117,10 @@ internal sealed class RunState(string run)
     /// <summary>Its time: the sender's, else the receipt.</summary>
     public DateTimeOffset At { get; set; }
 
-    /// <summary>Longest step so far of the run's own time step, when it is sent.</summary>
+    /// <summary>What is worth a line in the log but no alert, since the record before; cleared with each record.</summary>
+    public List<string> Notes { get; } = [];
+
+    /// <summary>The time step that later ones are compared with, when it is sent.</summary>
     public double? TimeStep { get; set; }
 
     /// <summary>What the step in progress is foretold to take still; null when nothing is.</summary>

@@ -52,7 +52,7 @@ internal static class ExaminationEndpoint
         }
         if (expected == 0) return Problem.Malformed.Because("The recording is empty.", ("line", 1), ("expected", "records, the first of kind open"));
         monitor.EndOfRecording();
-        return TypedResults.Ok(new Examination(name, monitor.Verdict, monitor.StepCount, monitor.IterationCount, [.. monitor.Alerts.OrderBy(a => a.Seq)], [.. monitor.Advice.OrderBy(a => a.Seq)], [.. monitor.NotJudged]));
+        return TypedResults.Ok(new Examination(name, monitor.Verdict, monitor.StepCount, monitor.IterationCount, [.. monitor.Alerts.OrderBy(a => a.Seq)], [.. monitor.AdviceGiven.OrderBy(a => a.Seq)], [.. monitor.NotJudged]));
     }
 }
 

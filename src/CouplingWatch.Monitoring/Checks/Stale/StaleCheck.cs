@@ -23,9 +23,6 @@ internal sealed class StaleCheck(StaleOptions options) : ICheck
 
     public string Id => CheckIds.Stale;
 
-    /// <summary>The notes of steps that look stale without making an alert: for the log.</summary>
-    public Action<RunState, string>? Noted { get; set; }
-
     public void Restart(RunState run, RestartCause cause)
     {
         if (cause == RestartCause.TimeStep) return;
@@ -48,7 +45,7 @@ internal sealed class StaleCheck(StaleOptions options) : ICheck
         if (step.Last + 1 < options.IterationsMore + median) return;
         var stale = System.Numerics.BitOperations.PopCount(recent & ((1UL << (options.Within - 1)) - 1)) + 1;
         if (stale >= options.Steps) findings.Add(Stale(run, median, stale));
-        else if (!noted) Noted?.Invoke(run, $"step {step.Step} looks stale: its first update missed, and it takes {step.Last + 1} iterations and more where {Say.Number(median)} are usual");
+        else if (!noted) run.Notes.Add($"step {step.Step} looks stale: its first update missed, and it takes {step.Last + 1} iterations and more where {Say.Number(median)} are usual");
         noted = true;
     }
 
