@@ -1,5 +1,6 @@
 using CouplingWatch.Monitoring.Checks.Start;
 using CouplingWatch.Monitoring.Statistics;
+using CouplingWatch.Numerics.Vectors;
 using CouplingWatch.Records;
 
 namespace CouplingWatch.Monitoring.Tests.Recordings;
@@ -51,8 +52,21 @@ public sealed class FigureTests
         Assert.Equal(directions, spectrum.Directions);
         Assert.Equal(smallest, spectrum.LambdaMin!.Value, 6e-5);
         Assert.Equal(largest, spectrum.LambdaMax!.Value, 6e-5);
+        Assert.Equal(limit, 2 / (1 - spectrum.LambdaMin.Value), 6e-5);
+        Assert.Equal(best, 2 / (2 - spectrum.LambdaMin.Value - spectrum.LambdaMax.Value), 6e-5);
+        if (name == "c02") return;
         Assert.Equal(limit, spectrum.RelaxationLimit!.Value, 6e-5);
         Assert.Equal(best, spectrum.RelaxationBest!.Value, 6e-5);
+    }
+
+    [Fact]
+    public void No_relaxation_is_named_where_imaginary_parts_exceed_a_tenth_of_the_largest_value()
+    {
+        var spectrum = Recording.Of("c02").Judge().Spectrum()!;
+        Assert.True(spectrum.Values.Max(v => Math.Abs(v.Imaginary)) > 0.1 * spectrum.Values.Max(v => Math.Sqrt(v.Real * v.Real + v.Imaginary * v.Imaginary)));
+        Assert.Null(spectrum.RelaxationLimit);
+        Assert.Null(spectrum.RelaxationBest);
+        Assert.Contains("complex", spectrum.Why, StringComparison.Ordinal);
     }
 
     [Theory]
@@ -81,7 +95,8 @@ public sealed class FigureTests
 
     private static double Actual(Recording recording, int step, int iteration)
     {
-        var norms = recording.Records.OfType<IterationRecord>().Where(i => i.Step == step).DistinctBy(i => i.Seq).ToDictionary(i => i.Iteration, i => i.Residuals.Values[0]);
+        var norms = recording.Records.OfType<IterationRecord>().Where(i => i.Step == step).DistinctBy(i => i.Seq)
+            .ToDictionary(i => i.Iteration, i => i.Sketch is { } sketch ? LongVector.Norm(sketch.Residual) : i.Residuals.Values[0]);
         return norms[iteration + 1] / norms[iteration];
     }
 }

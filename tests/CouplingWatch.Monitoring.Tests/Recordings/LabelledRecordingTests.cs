@@ -59,7 +59,7 @@ public sealed class LabelledRecordingTests
         var recording = Recording.Of(name);
         var monitor = recording.Judge();
         var outcomes = recording.Label["outcomes"]!.AsObject();
-        Assert.Equal((int)recording.Label["steps"]! - (int?)outcomes["cut"] ?? 0, monitor.StepCount);
+        Assert.Equal((int)recording.Label["steps"]! - ((int?)outcomes["cut"] ?? 0), monitor.StepCount);
         Assert.Equal((long)recording.Label["iterations"]!, monitor.IterationCount);
     }
 
