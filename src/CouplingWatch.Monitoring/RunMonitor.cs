@@ -4,6 +4,7 @@ using CouplingWatch.Monitoring.Basis;
 using CouplingWatch.Monitoring.Checks;
 using CouplingWatch.Monitoring.Spectrum;
 using CouplingWatch.Monitoring.State;
+using CouplingWatch.Monitoring.Views;
 using CouplingWatch.Records;
 using CouplingWatch.Wire;
 
@@ -18,6 +19,9 @@ public sealed partial class RunMonitor
     private readonly AdviceBook advice;
     private readonly ICheck[] checks;
     private readonly IRunListener[] listeners;
+    private readonly StepPyramid pyramid = new();
+    private readonly StepTrail trail = new();
+    private readonly RunLog log = new();
     private readonly List<Finding> findings = [];
     private readonly List<Change> changes = [];
 
@@ -34,7 +38,7 @@ public sealed partial class RunMonitor
         alerts = new AlertBook(run);
         advice = new AdviceBook(run);
         checks = CheckList.All(Options);
-        listeners = [];
+        listeners = [pyramid, trail, log];
     }
 
     public string Run { get; }
@@ -58,9 +62,11 @@ public sealed partial class RunMonitor
     /// <summary>Seconds inside <paramref name="solver"/> after which it counts as hanging.</summary>
     public double HangLimitSeconds(string solver) => state.Times.HangLimit(solver);
 
-    public RunSummary Summary(DateTimeOffset now) => throw new NotImplementedException();
+    /// <summary>The lane of the board.</summary>
+    public RunSummary Summary() => SummaryWriter.Write(this, pyramid, trail);
 
-    public RunDetail Detail(DateTimeOffset now) => throw new NotImplementedException();
+    /// <summary>Everything the run page shows.</summary>
+    public RunDetail Detail() => DetailWriter.Write(this, pyramid, trail, log);
 
     /// <summary>The secant basis after an iteration (the latest when null), also under another rule or threshold; null when it is not known or no longer kept.</summary>
     /// <exception cref="ArgumentOutOfRangeException">The threshold does not lie in 0 ≤ ε &lt; 1.</exception>
@@ -70,10 +76,10 @@ public sealed partial class RunMonitor
     public SpectrumView? Spectrum() => PassSpectrum.View(state);
 
     /// <summary>Per-step summaries of [from, to], thinned to at most <paramref name="points"/> groups without losing extremes.</summary>
-    public IReadOnlyList<StripBar> Steps(int? from, int? to, int points) => throw new NotImplementedException();
+    public IReadOnlyList<StripBar> Steps(int? from, int? to, int points) => pyramid.Bars(from, to, points);
 
     /// <summary>The iterations of a step with what was known as each arrived; empty when they are no longer kept.</summary>
-    public IReadOnlyList<IterationView> Iterations(int step) => throw new NotImplementedException();
+    public IReadOnlyList<IterationView> Iterations(int step) => DetailWriter.Iterations(state, step);
 
     /// <summary>All alerts, open and closed, in order of seq.</summary>
     public IReadOnlyList<Alert> Alerts => alerts.All;
@@ -96,7 +102,7 @@ public sealed partial class RunMonitor
         }
     }
 
-    public Verdict Verdict => Views.VerdictWriter.Write(this);
+    public Verdict Verdict => VerdictWriter.Write(this);
 
     public IReadOnlyList<SettingsRevision> Revisions => settings.All;
 
