@@ -11,8 +11,21 @@ namespace CouplingWatch.Monitoring.Views;
 /// <summary>The secant ledger: what each column brings, which are kept, and what another rule or threshold would do instead.</summary>
 internal static class BasisReader
 {
-    /// <summary>The basis at the latest iteration; null when nothing is known of it.</summary>
-    public static BasisView? Latest(RunState run, (int Step, int Iteration, BasisReport Report)? reported) => At(run, reported, null, null, null, null);
+    /// <summary>Condition of the columns kept at the latest iteration; null when none is kept or nothing is known of them.</summary>
+    public static ConditionPoint? ConditionNow(RunState run, (int Step, int Iteration, BasisReport Report)? reported)
+    {
+        foreach (var group in run.Basis.Groups)
+        {
+            if (group.Columns is not { Count: > 0 } store || Stored(group, null, null) is not { } vector) continue;
+            var order = store.Order(vector.Ordinal, vector.Iteration, run.HistorySteps, out _);
+            var rule = GroupBasis.RuleOf(Known(run.Settings.FilterRule)) ?? SecantFilter.None;
+            if (order.Length == 0 || ConditionOf(ColumnFilter.Apply(store.Secants, order, rule, UpdateJudge.ThresholdOf(run))) is not { } condition) return null;
+            return new ConditionPoint(vector.Step, vector.Iteration, condition.Raw, condition.UnitColumns, condition.UnitColumns * run.DeclaredNoise);
+        }
+        if (reported is not { } sent || ReportedTriangle.Of(sent.Report) is not { } triangle) return null;
+        var number = ConditionNumber.Of(triangle);
+        return new ConditionPoint(sent.Step, sent.Iteration, number.Raw, number.UnitColumns, number.UnitColumns * run.DeclaredNoise);
+    }
 
     /// <param name="reported">The latest report of the code, for runs that send no vectors.</param>
     /// <param name="step">The latest when null; null is answered for one that is no longer kept.</param>

@@ -53,7 +53,7 @@ internal sealed class StepTrail : IRunListener
         if (step.Outcome == StepOutcome.Rejected) return;
         if (step.Unconverged) IterationsUnconverged += step.Iterations;
         NoteGoverning(run, step.Step);
-        if (BasisReader.Latest(run, Reported) is { Kept: > 0 } basis) Push(condition, new ConditionPoint(step.Step, basis.Iteration, basis.Condition, basis.ConditionUnit, basis.CoefficientError));
+        if (BasisReader.ConditionNow(run, Reported) is { } point) Push(condition, point);
     }
 
     private void NoteGoverning(RunState run, int step)

@@ -49,7 +49,7 @@ internal sealed class LiveUpdates(ChangeSignals signals, HubWatchers watchers, H
             ChangeKind.Advice => ("advice", new AdviceMessage(run, seq, judge.Ask<IReadOnlyList<Advice>>(m => [.. m.Advice], []))),
             ChangeKind.Settings when judge.Ask(m => Revision(m, change.Subject), null) is { } revision =>
                 ("settings", new SettingsMessage(run, seq, revision)),
-            ChangeKind.Race when judge.Ask(m => m.Detail(time.GetUtcNow()).Race, null) is { } race =>
+            ChangeKind.Race when judge.Ask(m => m.Detail().Race, null) is { } race =>
                 ("race", new RaceMessage(run, seq, race)),
             _ => null,
         };

@@ -18,7 +18,7 @@ internal sealed partial class RunHost
         {
             await LoadAsync(cancel);
             if (pictured is { } other && other.Version == Version && now - other.At < SummaryAge) return other.Summary;
-            var summary = judge!.Ask<RunSummary?>(m => m.Summary(now), null) ?? Unjudged(judge.FaultVerdict);
+            var summary = judge!.Ask<RunSummary?>(m => m.Summary(), null) ?? Unjudged(judge.FaultVerdict);
             pictured = new Pictured(Version, now, summary);
             return summary;
         }, cancel);
@@ -27,11 +27,10 @@ internal sealed partial class RunHost
     /// <summary>The run page.</summary>
     public async Task<RunDetail> DetailAsync(CancellationToken cancel = default)
     {
-        var now = around.Now();
         return await QueueAsync(async () =>
         {
             await LoadAsync(cancel);
-            return judge!.Ask<RunDetail?>(m => m.Detail(now), null) ?? Unjudged(Unjudged(judge.FaultVerdict));
+            return judge!.Ask<RunDetail?>(m => m.Detail(), null) ?? Unjudged(Unjudged(judge.FaultVerdict));
         }, cancel);
     }
 
