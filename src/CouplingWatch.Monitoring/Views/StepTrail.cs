@@ -53,7 +53,7 @@ internal sealed class StepTrail : IRunListener
         if (step.Outcome == StepOutcome.Rejected) return;
         if (step.Unconverged) IterationsUnconverged += step.Iterations;
         NoteGoverning(run, step.Step);
-        if (BasisReader.ConditionNow(run, Reported) is { } point) Push(condition, point);
+        if (ConditionReader.Now(run, Reported) is { } point) Push(condition, point);
     }
 
     private void NoteGoverning(RunState run, int step)
