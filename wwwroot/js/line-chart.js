@@ -102,7 +102,7 @@ function across(rule) {
 function upright(rule, narrow) {
   const side = (text, offset, anchor, lineOffset) => ({
     x: rule.at, offsetX: lineOffset, strokeDashArray: rule.role === 'cap' ? 4 : 0, borderColor: 'currentColor',
-    label: { text: text ?? '', borderColor: 'transparent', orientation: 'horizontal', textAnchor: anchor, offsetX: offset, offsetY: -7, style: plain(`rule-${rule.role}${anchor === 'start' ? '-after' : ''}`) },
+    label: { text: text ?? '', borderColor: 'transparent', orientation: 'horizontal', textAnchor: anchor, offsetX: offset, ...(rule.role === 'cap' ? { position: 'bottom', offsetY: -8 } : { offsetY: -7 }), style: plain(`rule-${rule.role}${anchor === 'start' ? '-after' : ''}`) },
   });
   if (rule.role === 'now') return [side(rule.before, narrow ? -4 : -6, 'end', -1.5), side(rule.after, narrow ? 4 : 6, 'start', 1.5)];
   return [side(rule.before, -6, 'end', 0)];

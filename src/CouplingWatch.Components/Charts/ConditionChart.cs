@@ -14,7 +14,7 @@ public static class ConditionChart
         var drawn = points.Select((p, i) => new ChartPoint(i, Height(p), Text: Reading(p))).ToArray();
         var y = NiceAxis.Decades(drawn.Where(p => p.Y is not null).Select(p => p.Y!.Value).Append(0), least: 6);
         if (declaredNoise is > 0 and var noise)
-            y = y with { Opposite = [.. Enumerable.Range(0, y.Ticks + 1).Select(i => Numbers.Power(Math.Pow(10, y.Low + i * (y.High - y.Low) / y.Ticks) * noise, 1))] };
+            y = y with { Opposite = [.. Enumerable.Range(0, y.Ticks + 1).Select(i => Error(Math.Pow(10, y.Low + i * (y.High - y.Low) / y.Ticks) * noise))] };
         var ends = points.Count == 0 ? new[] { "", "" } : [$"step {points[0].Step}", $"step {points[^1].Step}, now"];
         return new LineChartSpec
         {
@@ -36,6 +36,8 @@ public static class ConditionChart
 
     public static IReadOnlyList<IReadOnlyList<string>> Rows(IReadOnlyList<ConditionPoint> points) =>
         [.. points.Reverse().Select(p => new[] { $"{p.Step}, {p.Iteration}", Numbers.Power(p.Raw, 4), Numbers.Power(p.Unit, 4), Numbers.Power(p.CoefficientError, 2) })];
+
+    private static string Error(double value) => Math.Abs(value - 1) < 1e-9 ? "1" : Numbers.Power(value, 1);
 
     private static double? Height(ConditionPoint p) => (p.Unit ?? p.Raw) is { } k && double.IsFinite(k) && k > 0 ? Math.Log10(k) : null;
 

@@ -20,7 +20,8 @@ public static class ResidualPathChart
 
         var now = path.Points.Count > 0 ? path.Points[^1].Iteration : -1;
         var x = NiceAxis.Counts(Last(path, band, cone));
-        var y = NiceAxis.Decades(Heights(points).Concat(band.SelectMany(b => new[] { b.Y!.Value, b.Top!.Value })).Concat(judged ? [0, -1] : []));
+        var second = Explodes(path, judged);
+        var y = NiceAxis.Decades(Heights(points).Concat(Heights(second ?? [])).Concat(band.SelectMany(b => new[] { b.Y!.Value, b.Top!.Value })).Concat(judged ? [0, -1] : []));
 
         var series = new List<ChartSeries>();
         if (band.Length > 0) series.Add(new(SeriesRole.Band, band));
@@ -28,7 +29,7 @@ public static class ResidualPathChart
             series.Add(new(SeriesRole.Cone, Cone(cone.AtIteration, cone.Need, low, high)));
         if (cone is not null)
             series.Add(new(SeriesRole.Median, [new(cone.AtIteration, cone.Need), new(cone.AtIteration + cone.Remaining, 0)]));
-        if (Explodes(path, judged) is { } second) series.Add(new(SeriesRole.Second, second));
+        if (second is not null) series.Add(new(SeriesRole.Second, second));
         series.Add(new(SeriesRole.Path, points, Dots: points.Length <= 60));
 
         var rules = new List<ChartRule>();
@@ -42,13 +43,16 @@ public static class ResidualPathChart
     /// <summary>True when the plot is against a target.</summary>
     public static bool Judged(FieldPath path) => path.Points.Count == 0 ? path.Target is not null : path.Points.Any(p => p.Need is not null);
 
+    /// <summary>True when the norm runs away from its own ratio to the target, and is drawn dashed beside it.</summary>
+    public static bool RunsAway(FieldPath path) => Explodes(path, Judged(path)) is not null;
+
     /// <summary>"met at iteration 9 (8–10)", or how many more by the rate alone.</summary>
     public static string Met(StepForecast forecast)
     {
         var at = Whole(forecast.AtIteration + forecast.Remaining);
         if (forecast.Basis != "paths") return $"{Whole(forecast.Remaining)} more, by its rate";
         return forecast is { Low: { } low, High: { } high } && Whole(high) != Whole(low)
-            ? $"met at iteration {at} ({Whole(forecast.AtIteration + low)}–{Whole(forecast.AtIteration + high)})"
+            ? $"met at iteration {at} ({Whole(forecast.AtIteration + low)}\u2060–\u2060{Whole(forecast.AtIteration + high)})"
             : $"met at iteration {at}";
     }
 

@@ -12,6 +12,8 @@ public static class SplitAnswer
         ArgumentNullException.ThrowIfNull(run);
         if (run.Split.Count == 0)
         {
+            if (run.Settings.Method is Records.CouplingMethod.Fixed or Records.CouplingMethod.Aitken)
+                return new Answer(StateMark.NotJudged, "Nothing but the relaxation: the method in use has no columns.");
             return run.Basis is null
                 ? Answer.NotJudged(run, "Not judged with what this run sends.", "polluted", "conditioning", "starved")
                 : new Answer(StateMark.Learning, "No pass of this step is split yet.");

@@ -31,7 +31,7 @@ public class ResidualPathChartTests
         Assert.Equal(8, cone[1].X);
         Assert.Equal(0, cone[1].Y);
         Assert.Equal(new ChartPoint(10, 0, 0), cone[^1]);
-        Assert.Contains(ResidualPathChart.Of(Deflection, ByPaths).Notes, n => n.Text == "met at iteration 9 (8–10)");
+        Assert.Contains(ResidualPathChart.Of(Deflection, ByPaths).Notes, n => n.Text == "met at iteration 9 (8\u2060–\u206010)");
     }
 
     [Fact]

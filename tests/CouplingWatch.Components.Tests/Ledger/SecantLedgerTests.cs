@@ -137,7 +137,7 @@ public class SecantLedgerTests : BunitContext
     {
         var ledger = Render<SecantLedger>(p => p.Add(c => c.Basis, basis).Add(c => c.Newest, 24));
         Assert.Equal(24, ledger.FindAll("rect").Count);
-        ledger.FindAll("button").Single(b => b.TextContent == "+ 21 older").Click();
+        ledger.FindAll("button").Single(b => b.TextContent == "all 45 columns").Click();
         Assert.Equal(45, ledger.FindAll("rect").Count);
     }
 

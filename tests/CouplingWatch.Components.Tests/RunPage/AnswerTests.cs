@@ -14,7 +14,7 @@ public class AnswerTests
     public void A_step_foretold_from_earlier_ones_is_answered_yes_with_its_band()
     {
         var answer = ConvergenceAnswer.Of(HandDetails.TwoFields(Now));
-        Assert.Equal((StateMark.OnCourse, "Yes: done at iteration 9 (8–10), as earlier steps were."), (answer.Mark, answer.Say));
+        Assert.Equal((StateMark.OnCourse, "Yes: done at iteration 9 (8\u2060–\u206010), as earlier steps were."), (answer.Mark, answer.Say));
         Assert.Contains("The residual falls by a factor of 5.8 an iteration (10–90 %: 1.20 to 104).", answer.Notes);
         Assert.Contains(answer.Facts, f => f is { Name: "governs now", Value: "deflection" });
     }
