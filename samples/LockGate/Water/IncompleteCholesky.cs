@@ -1,12 +1,14 @@
 namespace LockGate.Water;
 
 /// <summary>
-/// Incomplete Cholesky factor without fill of the five-point matrix of a <see cref="ChamberMesh"/>, as preconditioner.
-/// Source: "An iterative solution method for linear systems of which the coefficient matrix is a symmetric M-matrix",
-/// Mathematics of Computation 31 (1977) 148-162, DOI 10.1090/S0025-5718-1977-0438681-4.
+/// Modified incomplete Cholesky factor without fill of the five-point matrix of a <see cref="ChamberMesh"/>, as preconditioner: the
+/// fill that is dropped is taken from the diagonal (nearly all of it, which keeps the pivots above 0).
+/// Sources (from memory): "An iterative solution method for linear systems of which the coefficient matrix is a symmetric M-matrix",
+/// Mathematics of Computation 31 (1977) 148-162; "A class of first order factorization methods", BIT 18 (1978) 142-156.
 /// </summary>
 internal sealed class IncompleteCholesky
 {
+    private const double Modified = 0.97;
     private readonly int along;
     private readonly double east;
     private readonly double north;
@@ -25,8 +27,9 @@ internal sealed class IncompleteCholesky
         for (var c = 0; c < diagonal.Length; c++)
         {
             var pivot = diagonal[c];
-            if (c % along > 0) pivot -= east * east * inversePivot[c - 1];
-            if (c >= along) pivot -= north * north * inversePivot[c - along];
+            var fillAbove = c + along < diagonal.Length ? Modified * north : 0;
+            if (c % along > 0) pivot -= east * (east + fillAbove) * inversePivot[c - 1];
+            if (c >= along) pivot -= north * (north + ((c + 1) % along > 0 ? Modified * east : 0)) * inversePivot[c - along];
             inversePivot[c] = 1 / pivot;
         }
     }
