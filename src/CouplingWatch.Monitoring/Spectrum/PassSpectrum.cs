@@ -56,7 +56,7 @@ internal static class PassSpectrum
     public static SpectrumView? View(RunState run)
     {
         if (Of(run) is not { } ritz) return null;
-        var relaxation = run.Settings.Method == CouplingMethod.Fixed ? run.RelaxationInForce : null;
+        var relaxation = run.RelaxationInForce;
         var limit = RelaxationLimit.FromSpectrum(ritz);
         return new SpectrumView
         {

@@ -11,7 +11,7 @@ internal static class CostWriter
     public static CostView Write(RunState run, StepTrail trail, RunForecast? forecast)
     {
         var nodes = run.Open?.Nodes;
-        var wall = trail.OpenedAt is { } opened && run.NextSeq > 0 ? (run.At - opened).TotalSeconds : 0;
+        var wall = trail.OpenedAt is { } opened && trail.LatestAt is { } latest ? (latest - opened).TotalSeconds : 0;
         var spentSeconds = Math.Max(wall, run.Times.Total);
         var perPass = run.Iterations == 0 ? 0 : spentSeconds / run.Iterations;
         var lost = run.IterationsRejected + trail.IterationsUnconverged;

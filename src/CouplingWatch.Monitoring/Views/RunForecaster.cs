@@ -31,7 +31,7 @@ internal static class RunForecaster
         var seconds = trail.StepSeconds;
         if (seconds.Count < LeastSteps) return new RunForecast { StepsLeft = left, Text = $"Not known yet: {seconds.Count} of {LeastSteps} step lengths seen." };
         var pace = Pace(seconds);
-        var from = run.LastClosed?.At ?? run.At;
+        var from = trail.LastClosedAt ?? run.At;
         var ends = After(from, left * pace.Median);
         var allocation = run.Open!.AllocationEndsAt;
         double? misses = null, unfit = null;

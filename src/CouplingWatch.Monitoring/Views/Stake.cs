@@ -13,11 +13,11 @@ internal static class Stake
     public const double LosingTimeLeast = 0.25;
     public const double Dearer = 0.15;
 
-    public static (double? Left, double? AtStake) Of(RunState run, Verdict verdict, RunForecast? forecast, double? bestIterations)
+    public static (double? Left, double? AtStake) Of(RunState run, Verdict verdict, RunForecast? forecast, StepTrail trail, double? bestIterations)
     {
         if (run.Close is not null) return (0, 0);
         if (run.Open?.Nodes is not { } nodes) return (null, null);
-        var from = run.At;
+        var from = trail.LatestAt ?? run.At;
         var until = forecast?.Ends ?? run.Open.AllocationEndsAt;
         if (run.Open.AllocationEndsAt is { } end && (until is null || end < until)) until = end;
         if (until is not { } last) return (null, null);

@@ -14,7 +14,7 @@ internal sealed class StepTrail : IRunListener
 
     private readonly Queue<GoverningStep> governing = new();
     private readonly Queue<ConditionPoint> condition = new();
-    private DateTimeOffset? lastClosedAt;
+    private bool senderHasClock;
 
     public IReadOnlyCollection<GoverningStep> Governing => governing;
 
@@ -32,23 +32,36 @@ internal sealed class StepTrail : IRunListener
     /// <summary>Iterations in steps that did not converge.</summary>
     public long IterationsUnconverged { get; private set; }
 
+    /// <summary>Time of the first and of the latest record, and of the last closed step: by the sender's clock where it has one, else by receipt.</summary>
     public DateTimeOffset? OpenedAt { get; private set; }
+
+    public DateTimeOffset? LatestAt { get; private set; }
+
+    public DateTimeOffset? LastClosedAt { get; private set; }
 
     public void Record(RunState run, StreamRecord record)
     {
-        if (record is OpenRecord) OpenedAt ??= run.At;
+        if (record.At is not null && !senderHasClock)
+        {
+            senderHasClock = true;
+            OpenedAt = null;
+        }
+        if (!senderHasClock || record.At is not null)
+        {
+            LatestAt = run.At;
+            OpenedAt ??= run.At;
+        }
         if (record is not IterationRecord iteration) return;
-        OpenedAt ??= run.At;
         Worst = iteration.Worst;
         if (iteration.Basis is { } report) Reported = (iteration.Step, iteration.Iteration, report);
     }
 
     public void StepClosed(RunState run, in ClosedStep step)
     {
-        if (step.At is { } at)
+        if (LatestAt is { } at)
         {
-            if (lastClosedAt is { } before && at > before) StepSeconds.Add((at - before).TotalSeconds);
-            lastClosedAt = at;
+            if (LastClosedAt is { } before && at > before) StepSeconds.Add((at - before).TotalSeconds);
+            LastClosedAt = at;
         }
         if (step.Outcome == StepOutcome.Rejected) return;
         if (step.Unconverged) IterationsUnconverged += step.Iterations;

@@ -21,7 +21,7 @@ internal static class SummaryWriter
         var verdict = monitor.Verdict;
         var forecast = RunForecaster.Foretell(run, trail);
         var strip = pyramid.Bars(null, null, StripBars);
-        var (left, stake) = Stake.Of(run, verdict, forecast, Cheapest(strip));
+        var (left, stake) = Stake.Of(run, verdict, forecast, trail, Cheapest(strip));
         var advice = monitor.Advice;
         return new RunSummary
         {

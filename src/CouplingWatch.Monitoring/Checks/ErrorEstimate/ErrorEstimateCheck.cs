@@ -44,6 +44,5 @@ internal sealed class ErrorEstimateCheck : ICheck
         if (!(Largest?.Error >= error)) Largest = (step.Step, error);
     }
 
-    public NotJudged? Lacks(RunState run) => run.Settings.Method == CouplingMethod.Fixed ? BasisLack.OfVectors(run, Id)
-        : run.Iterations == 0 ? null : new NotJudged(Id, "it is known for fixed relaxation only", "nothing: this method has no such estimate");
+    public NotJudged? Lacks(RunState run) => run.Settings.Method == CouplingMethod.Fixed ? BasisLack.OfVectors(run, Id) : null;
 }
