@@ -19,17 +19,21 @@ public static class AlertGroups
             .Select(a => new AlertGroup(a, [.. explained[a.Id].OrderBy(e => e.Seq)]))];
     }
 
-    /// <summary>The alert at the root of the chain of causes, if it is listed and still stands with its symptom (open with open).</summary>
+    /// <summary>The alert at the root of the chain of causes, if it is listed and still stands with its symptom; null for a root. A ring counts as caused by its first id.</summary>
     private static Alert? Cause(Alert alert, Dictionary<string, Alert> byId)
     {
-        Alert? root = null;
-        var at = alert;
-        for (var hops = 0; hops < 8 && at.Cause is { } id && byId.TryGetValue(id, out var cause) && cause.Id != alert.Id; hops++)
+        var root = alert;
+        var seen = new HashSet<string>(StringComparer.Ordinal) { alert.Id };
+        while (root.Cause is { } id && byId.TryGetValue(id, out var cause))
         {
+            if (!seen.Add(cause.Id))
+            {
+                root = byId[seen.Min(StringComparer.Ordinal)!];
+                break;
+            }
             root = cause;
-            at = cause;
         }
-        return root is not null && Open(alert) && !Open(root) ? null : root;
+        return root.Id == alert.Id || (Open(alert) && !Open(root)) ? null : root;
     }
 
     /// <summary>The condition stands.</summary>

@@ -88,14 +88,20 @@ public sealed partial class AlertsPage : IDisposable
         foreach (var group in Shown)
         {
             var head = group.Head;
-            var step = AlertGroups.Open(head) ? head.LastStep : head.Step;
-            if (iterations.GetValueOrDefault(head.Id) is not { } kept || kept.Step != step || kept.LastSeq != head.LastSeq)
-                iterations[head.Id] = new(step, head.LastSeq, await Feed.IterationsAsync(head.Run, step));
+            if (iterations.GetValueOrDefault(head.Id) is not { } kept || kept.LastSeq != head.LastSeq)
+                iterations[head.Id] = new(head.LastSeq, await LatestIterationsAsync(head));
             var ids = string.Join(' ', head.Advice.Concat(group.AlsoSeen.SelectMany(a => a.Advice)));
             if (ids.Length == 0 || (advice.TryGetValue(head.Id, out var known) && known.Key == ids)) continue;
             var all = await Feed.RunAsync(head.Run) is { } detail ? detail.Advice : [];
             advice[head.Id] = (ids, [.. all.Where(a => ids.Split(' ').Contains(a.Id))]);
         }
+    }
+
+    /// <summary>The step the alert last held in while it stands, else the one that raised it.</summary>
+    private async Task<IReadOnlyList<IterationView>> LatestIterationsAsync(Alert alert)
+    {
+        if (AlertGroups.Open(alert) && alert.LastStep != alert.Step && await Feed.IterationsAsync(alert.Run, alert.LastStep) is { Count: > 0 } latest) return latest;
+        return await Feed.IterationsAsync(alert.Run, alert.Step);
     }
 
     private RunSummary? RunOf(Alert alert) => runs.GetValueOrDefault(alert.Run);
@@ -125,7 +131,7 @@ public sealed partial class AlertsPage : IDisposable
         following?.Dispose();
     }
 
-    private sealed record KeptIterations(int Step, long LastSeq, IReadOnlyList<IterationView> Items);
+    private sealed record KeptIterations(long LastSeq, IReadOnlyList<IterationView> Items);
 
     private sealed class StateFilter(string word, bool on, Func<AlertState, bool> takes)
     {

@@ -8,6 +8,7 @@ namespace CouplingWatch.Components.Board;
 public partial class Lane
 {
     private Shown? shown;
+    private bool changed;
 
     [Parameter, EditorRequired] public RunSummary Run { get; set; } = null!;
 
@@ -37,13 +38,14 @@ public partial class Lane
     /// <summary>The passes matter to the strip only while it has no bar.</summary>
     private IReadOnlyList<PassPair> FirstStepPasses => Run.Strip.Count == 0 ? Run.Passes : [];
 
-    protected override bool ShouldRender()
+    protected override void OnParametersSet()
     {
         var next = new Shown(Run.NextSeq, Run.State, Run.Verdict, Run.Next?.Id, Run.NodeHoursAtStake, Run.Revision, Run.Forecast, Now, Calm, LookedAtStep, Zone);
-        if (next == shown) return false;
+        changed = next != shown;
         shown = next;
-        return true;
     }
+
+    protected override bool ShouldRender() => changed;
 
     private void Open(StripBar bar) => Navigation.NavigateTo($"{Href}?step={bar.ToStep}");
 
