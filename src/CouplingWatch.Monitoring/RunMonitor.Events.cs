@@ -1,9 +1,7 @@
 using System.Globalization;
-using System.Text.Json.Nodes;
 using CouplingWatch.Monitoring.Alerts;
-using CouplingWatch.Monitoring.Checks;
+using CouplingWatch.Monitoring.Checks.Hang;
 using CouplingWatch.Monitoring.Checks.Silent;
-using CouplingWatch.Monitoring.Wording;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring;
@@ -26,7 +24,7 @@ public sealed partial class RunMonitor
                 break;
             case HangEvent e:
                 state.At = e.At;
-                findings.Add(Hanging(e));
+                findings.Add(HangCheck.Hanging(e));
                 Report();
                 break;
             case PublishedEvent e:
@@ -60,8 +58,4 @@ public sealed partial class RunMonitor
         changes.Add(new Change(ChangeKind.Verdict));
         return changes;
     }
-
-    private static Finding Hanging(HangEvent e) => new(CheckIds.Hang, Severity.Critical,
-        $"{e.Solver} has been inside one pass for {Say.Seconds(e.InsideSeconds)}; its passes take {Say.Seconds(e.LimitSeconds)} at most when it is well.",
-        new JsonObject { ["solver"] = e.Solver, ["insideSeconds"] = e.InsideSeconds, ["limitSeconds"] = e.LimitSeconds }, Certain: true);
 }

@@ -49,6 +49,7 @@ public sealed partial class RunMonitor
             case AppliedRecord applied: OnApplied(applied); break;
             case ResizeRecord resize: OnResize(resize); break;
             case SkippedRecord: RecordsMissing(); break;
+            case BeatRecord: state.BeatsSeen = true; break;
             case CheckpointRecord checkpoint: state.Checkpoint = checkpoint; break;
             case CloseRecord close:
                 state.Close = close;

@@ -7,12 +7,11 @@ namespace CouplingWatch.Monitoring.Basis;
 /// <summary>What keeps a check of the secant basis from judging.</summary>
 internal static class BasisLack
 {
-    /// <summary>For a check that needs level 2: what the code reports of its updates, or vectors.</summary>
+    /// <summary>For a check that needs level 2: what the code reports of its updates, or vectors. A method without secant columns lacks nothing: there is no basis.</summary>
     public static NotJudged? Of(RunState run, string check)
     {
         if (run.Iterations == 0) return null;
-        if (run.Settings.Method is CouplingMethod.Fixed or CouplingMethod.Aitken)
-            return new NotJudged(check, $"method {Wording.Say.Method(run.Settings.Method.Value)} makes its updates without secant columns", "nothing: there is no basis to judge");
+        if (run.Settings.Method is CouplingMethod.Fixed or CouplingMethod.Aitken) return null;
         if (run.Basis.ReportsSent) return null;
         if (run.Basis.Refused is { } refused) return new NotJudged(check, refused.Lack!, refused.Send);
         if (!run.Basis.VectorsSent) return new NotJudged(check, "nothing is known of the secant columns", "basis with each update (level 2), or vectors or sketches (level 3)");

@@ -35,6 +35,9 @@ internal sealed class GroupBasis(string? group)
 
     public int LatestReportIteration { get; private set; }
 
+    /// <summary>A triangle came with a report.</summary>
+    public bool TriangleSent { get; private set; }
+
     /// <summary>Columns are in use that were born before what was sent here (a kept or mapped basis): own filtering cannot be trusted for so many steps.</summary>
     public int ForeignSteps { get; set; }
 
@@ -89,6 +92,7 @@ internal sealed class GroupBasis(string? group)
         if (double.IsNaN(FirstNorm)) FirstNorm = norm;
         LowestNorm = double.IsNaN(LowestNorm) ? norm : Math.Min(LowestNorm, norm);
         if (report is not null) (LatestReport, LatestReportIteration) = (report, run.Step.Iteration);
+        TriangleSent |= report?.R is not null;
         var facts = UpdateJudge.Judge(this, run, report, norm, relaxed, surrogate);
         if (facts is null) return;
         if (updates.Count == UpdatesKept) updates.RemoveAt(0);

@@ -1,12 +1,17 @@
 using CouplingWatch.Monitoring.Checks.Capped;
+using CouplingWatch.Monitoring.Checks.Conditioning;
 using CouplingWatch.Monitoring.Checks.Divergence;
 using CouplingWatch.Monitoring.Checks.Drift;
 using CouplingWatch.Monitoring.Checks.ErrorEstimate;
 using CouplingWatch.Monitoring.Checks.FalseClaim;
+using CouplingWatch.Monitoring.Checks.Forecast;
+using CouplingWatch.Monitoring.Checks.Hang;
 using CouplingWatch.Monitoring.Checks.NoiseFloor;
 using CouplingWatch.Monitoring.Checks.Oscillation;
 using CouplingWatch.Monitoring.Checks.Polluted;
+using CouplingWatch.Monitoring.Checks.Rate;
 using CouplingWatch.Monitoring.Checks.Slow;
+using CouplingWatch.Monitoring.Checks.Spectrum;
 using CouplingWatch.Monitoring.Checks.Stale;
 using CouplingWatch.Monitoring.Checks.Stall;
 using CouplingWatch.Monitoring.Checks.Start;
@@ -20,6 +25,8 @@ internal static class CheckList
 {
     public static ICheck[] All(MonitorOptions options) =>
     [
+        new RateCheck(),
+        new ForecastCheck(),
         new DivergenceCheck(options.Divergence),
         new FalseClaimCheck(options.FalseClaim),
         new PollutedCheck(options.Polluted),
@@ -32,6 +39,9 @@ internal static class CheckList
         new CappedCheck(),
         new DriftCheck(options.Drift),
         new UnequalFieldsCheck(options.UnequalFields),
+        new HangCheck(),
+        new ConditioningCheck(),
+        new SpectrumCheck(),
         new StartCheck(),
         new ErrorEstimateCheck(),
     ];

@@ -100,6 +100,8 @@ internal sealed class RunState(string run)
 
     public bool SendsStepRecords { get; set; }
 
+    public bool BeatsSeen { get; set; }
+
     /// <summary>The highest level of data seen: 0 residuals, 1 magnitudes, 2 basis, 3 vectors or sketch.</summary>
     public int Level { get; set; }
 

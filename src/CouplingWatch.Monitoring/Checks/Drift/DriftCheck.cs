@@ -56,20 +56,24 @@ internal sealed class DriftCheck(DriftOptions options) : ICheck
     private double deviation;
     private double median;
     private double sum;
+    private double? timeStep;
+    private int otherTimeSteps;
 
     public string Id => CheckIds.Drift;
 
     public void Restart(RunState run, RestartCause cause)
     {
+        if (cause == RestartCause.TimeStep) return;
         baseline.Clear();
         latest.Clear();
         skipped = 0;
         sum = 0;
+        otherTimeSteps = 0;
     }
 
     public void StepClosed(RunState run, in ClosedStep step, List<Finding> findings)
     {
-        if (!step.Converged || run.Steady || !step.Complete) return;
+        if (!step.Converged || run.Steady || !step.Complete || OtherTimeStep(run, step)) return;
         if (skipped < options.SkippedSteps)
         {
             skipped++;
@@ -78,7 +82,9 @@ internal sealed class DriftCheck(DriftOptions options) : ICheck
         if (!baseline.IsFull)
         {
             baseline.Add(step.Iterations);
-            if (baseline.IsFull) SetBaseline();
+            if (!baseline.IsFull) return;
+            SetBaseline();
+            timeStep = step.TimeStep ?? run.TimeStep;
             return;
         }
         latest.Add(step.Iterations);
@@ -86,6 +92,19 @@ internal sealed class DriftCheck(DriftOptions options) : ICheck
         if (!(sum > options.Limit) || !latest.IsFull || run.Learning.Holds) return;
         var now = Robust.Median(latest, Latest);
         if (now >= Math.Max(options.LeastRatio * median, median + options.LeastIncrease)) findings.Add(Dearer(now));
+    }
+
+    /// <summary>Steps of a time step far from the baseline's do not compare with it; when they stay, a new baseline is due.</summary>
+    private bool OtherTimeStep(RunState run, in ClosedStep step)
+    {
+        if (!baseline.IsFull || (step.TimeStep ?? run.TimeStep) is not { } now) return false;
+        if (timeStep is not { } reference || now / reference is > 0.5 and < 2)
+        {
+            otherTimeSteps = 0;
+            return false;
+        }
+        if (++otherTimeSteps >= Latest) Restart(run, RestartCause.Settings);
+        return true;
     }
 
     private void SetBaseline()

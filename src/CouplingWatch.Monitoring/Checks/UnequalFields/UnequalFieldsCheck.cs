@@ -39,7 +39,10 @@ internal sealed class UnequalFieldsCheck(UnequalFieldsOptions options) : ICheck
 
     public string Id => CheckIds.UnequalFields;
 
-    public void Restart(RunState run, RestartCause cause) => late.Clear();
+    public void Restart(RunState run, RestartCause cause)
+    {
+        if (cause != RestartCause.TimeStep) late.Clear();
+    }
 
     public void StepClosed(RunState run, in ClosedStep step, List<Finding> findings)
     {
