@@ -8,7 +8,18 @@ namespace CouplingWatch.Monitoring.Checks;
 /// <param name="Text">One sentence a tired engineer understands, with its numbers.</param>
 /// <param name="Evidence">The numbers behind it, by name.</param>
 /// <param name="Certain">True when it stands whatever becomes of the attempt (a residual that is not a number, a divergence, silence).</param>
-internal sealed record Finding(string Check, Severity Severity, string Text, JsonObject Evidence, bool Certain = false);
+internal sealed record Finding(string Check, Severity Severity, string Text, JsonObject Evidence, bool Certain = false)
+{
+    /// <summary>The numbers behind it; those that are none (NaN, infinite) are null.</summary>
+    public JsonObject Evidence { get; } = Finite(Evidence);
+
+    private static JsonObject Finite(JsonObject evidence)
+    {
+        foreach (var (name, value) in evidence.ToArray())
+            if (value is JsonValue number && number.TryGetValue<double>(out var d) && !double.IsFinite(d)) evidence[name] = null;
+        return evidence;
+    }
+}
 
 /// <summary>The stable ids of the checks, and in which order they explain each other: causes before symptoms.</summary>
 internal static class CheckIds

@@ -68,6 +68,27 @@ public sealed class OddStreamTests
         }, iter: 100);
     }
 
+    [Fact]
+    public void The_odd_streams_reach_nearly_every_check()
+    {
+        HashSet<string> raised = [];
+        var finite = true;
+        for (var seed = 0; seed < 200; seed++)
+        {
+            var monitor = new RunMonitor("odd");
+            var n = 0;
+            foreach (var item in OddStream.Of(seed)) Feed(monitor, item, n++);
+            monitor.EndOfRecording();
+            foreach (var alert in monitor.Alerts)
+            {
+                raised.Add(alert.Check);
+                finite &= !alert.Evidence.ToJsonString(WireJson.Options).Contains("NaN", StringComparison.Ordinal);
+            }
+        }
+        Assert.True(finite, "evidence holds a number that is none");
+        Assert.Superset(new HashSet<string> { "divergence", "false-claim", "silent", "hang", "starved", "stall", "unconverged-run", "capped" }, raised);
+    }
+
     internal static void Feed(RunMonitor monitor, object item, int n)
     {
         if (item is StreamRecord record) monitor.Observe(record, Now.AddSeconds(n));
