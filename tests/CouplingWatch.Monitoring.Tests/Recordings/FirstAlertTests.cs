@@ -25,7 +25,7 @@ public sealed class FirstAlertTests
     [InlineData("c27", "noise-floor@18 capped@21 polluted@36")]
     public void The_first_alerts_come_at_these_records(string name, string expected)
     {
-        var first = Recording.Of(name).Judge().Alerts.GroupBy(a => a.Check).ToDictionary(g => g.Key, g => g.Min(a => a.Seq));
+        var first = Recording.Of(name).Judgement.Alerts.GroupBy(a => a.Check).ToDictionary(g => g.Key, g => g.Min(a => a.Seq));
         foreach (var entry in expected.Split(' '))
         {
             var (check, seq) = (entry[..entry.IndexOf('@', StringComparison.Ordinal)], long.Parse(entry[(entry.IndexOf('@', StringComparison.Ordinal) + 1)..], System.Globalization.CultureInfo.InvariantCulture));
@@ -45,7 +45,7 @@ public sealed class FirstAlertTests
     [InlineData("c25")]
     [InlineData("c26")]
     [InlineData("c28")]
-    public void Healthy_recordings_raise_nothing(string name) => Assert.Empty(Recording.Of(name).Judge().Alerts);
+    public void Healthy_recordings_raise_nothing(string name) => Assert.Empty(Recording.Of(name).Judgement.Alerts);
 
     [Theory]
     [InlineData("c05", 102)]

@@ -13,7 +13,7 @@ public sealed class LabelledRecordingTests
     public void Every_labelled_condition_is_found_at_or_after_its_seq(string name)
     {
         var recording = Recording.Of(name);
-        var alerts = recording.Judge().Alerts;
+        var alerts = recording.Judgement.Alerts;
         foreach (var condition in recording.Label["conditions"]!.AsArray())
             Assert.Contains(alerts, a => a.Check == (string)condition!["check"]! && a.Seq >= (long)condition["fromSeq"]!);
     }
@@ -25,7 +25,7 @@ public sealed class LabelledRecordingTests
         var recording = Recording.Of(name);
         var allowed = recording.Label["conditions"]!.AsArray().Select(c => (string)c!["check"]!)
             .Concat(recording.Label["mayAlso"]!.AsArray().Select(c => (string)c!)).ToHashSet();
-        Assert.All(recording.Judge().Alerts, a => Assert.Contains(a.Check, allowed));
+        Assert.All(recording.Judgement.Alerts, a => Assert.Contains(a.Check, allowed));
     }
 
     [Theory]
@@ -35,7 +35,7 @@ public sealed class LabelledRecordingTests
         var recording = Recording.Of(name);
         var wanted = recording.Label["adviceAnyOf"]!.AsArray();
         if (wanted.Count == 0) return;
-        var given = recording.Judge().AdviceGiven;
+        var given = recording.Judgement.AdviceGiven;
         Assert.Contains(given, a => wanted.Any(w => Matches(a, w!)));
     }
 
@@ -43,7 +43,7 @@ public sealed class LabelledRecordingTests
     [MemberData(nameof(Names))]
     public void Every_alert_is_a_sentence_with_evidence(string name)
     {
-        foreach (var alert in Recording.Of(name).Judge().Alerts)
+        foreach (var alert in Recording.Of(name).Judgement.Alerts)
         {
             Assert.EndsWith(".", alert.Text, StringComparison.Ordinal);
             Assert.DoesNotContain("NaN", alert.Text, StringComparison.Ordinal);
@@ -57,7 +57,7 @@ public sealed class LabelledRecordingTests
     public void Steps_and_iterations_are_counted_as_labelled(string name)
     {
         var recording = Recording.Of(name);
-        var monitor = recording.Judge();
+        var monitor = recording.Judgement;
         var outcomes = recording.Label["outcomes"]!.AsObject();
         Assert.Equal((int)recording.Label["steps"]! - ((int?)outcomes["cut"] ?? 0), monitor.StepCount);
         Assert.Equal((long)recording.Label["iterations"]!, monitor.IterationCount);

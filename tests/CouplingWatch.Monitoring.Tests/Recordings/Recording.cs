@@ -4,6 +4,7 @@ using CouplingWatch.Monitoring;
 using CouplingWatch.Ndjson;
 using CouplingWatch.Records;
 using CouplingWatch.Testing;
+using CouplingWatch.Wire;
 
 namespace CouplingWatch.Monitoring.Tests.Recordings;
 
@@ -12,6 +13,8 @@ internal sealed class Recording
 {
     private static readonly Lazy<JsonArray> Labels = new(() => JsonNode.Parse(File.ReadAllText(ReferenceData.Path("recordings", "labels.json")))!.AsArray());
     private static readonly Dictionary<string, IReadOnlyList<StreamRecord>> Read = [];
+
+    private static readonly Dictionary<string, Judgement> Judged = [];
 
     private Recording(JsonObject label) => Label = label;
 
@@ -57,6 +60,20 @@ internal sealed class Recording
         return monitor;
     }
 
+    /// <summary>What the default monitor says of the whole recording; judged once.</summary>
+    public Judgement Judgement
+    {
+        get
+        {
+            lock (Judged)
+            {
+                if (Judged.TryGetValue(File0, out var known)) return known;
+                var monitor = Judge();
+                return Judged[File0] = new Judgement(monitor.Alerts, monitor.AdviceGiven, monitor.NotJudged, monitor.StepCount, monitor.IterationCount);
+            }
+        }
+    }
+
     /// <summary>The monitor right after iteration <paramref name="iteration"/> of a step.</summary>
     public RunMonitor Until(int step, int iteration)
     {
@@ -71,3 +88,5 @@ internal sealed class Recording
 
     public override string ToString() => Name;
 }
+
+internal sealed record Judgement(IReadOnlyList<Alert> Alerts, IReadOnlyList<Advice> AdviceGiven, IReadOnlyList<NotJudged> NotJudged, int StepCount, long IterationCount);

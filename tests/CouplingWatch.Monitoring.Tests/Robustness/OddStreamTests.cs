@@ -106,11 +106,14 @@ public sealed class OddStreamTests
         _ = monitor.Basis();
         _ = monitor.Basis(rule: FilterRule.PivotRatio, threshold: 1e-3);
         _ = monitor.Spectrum();
+        _ = monitor.Summary();
+        _ = monitor.Steps(null, null, 50);
+        _ = monitor.Iterations(1);
         _ = monitor.SilenceLimitSeconds;
         _ = Written(monitor);
     }
 
     /// <summary>The judgement as bytes would say it.</summary>
     internal static string Written(RunMonitor monitor) =>
-        JsonSerializer.Serialize(new { monitor.Alerts, monitor.AdviceGiven, monitor.Advice, monitor.NotJudged, monitor.Verdict, monitor.Revisions, basis = monitor.Basis(), spectrum = monitor.Spectrum() }, WireJson.Options);
+        JsonSerializer.Serialize(new { monitor.Alerts, monitor.AdviceGiven, monitor.Advice, monitor.NotJudged, monitor.Verdict, monitor.Revisions, basis = monitor.Basis(), spectrum = monitor.Spectrum(), detail = monitor.Detail() }, WireJson.Options);
 }
