@@ -7,6 +7,7 @@ return args switch
 {
     ["counts", ..] => Counts(),
     ["races", ..] => Races(),
+    ["rules", ..] => Rules(),
     _ => Usage(),
 };
 
@@ -25,7 +26,7 @@ int Counts()
 
 int Races()
 {
-    var options = new RaceOptions();
+    var options = args.Contains("--plain") ? RaceOptions.Plain : new RaceOptions();
     var seed = long.Parse(Option("--seed") ?? "1", CultureInfo.InvariantCulture);
     var jobs = from variant in Chosen() from start in Starts.All select (variant, start);
     var threads = int.Parse(Option("--threads") ?? "1", CultureInfo.InvariantCulture);
@@ -40,6 +41,21 @@ int Races()
     return trials.Any(t => t.Harmful) ? 1 : 0;
 }
 
+int Rules()
+{
+    var seeds = int.Parse(Option("--seeds") ?? "3", CultureInfo.InvariantCulture);
+    var threads = int.Parse(Option("--threads") ?? "1", CultureInfo.InvariantCulture);
+    var whole = new WholeRuns();
+    foreach (var (name, options) in RuleSets.All.Where(r => Option("--set") is not { } only || r.Name.Contains(only, StringComparison.Ordinal)))
+    {
+        var jobs = from variant in Chosen() from start in Starts.All from seed in Enumerable.Range(1, seeds) select (variant, start, seed);
+        var trials = jobs.AsParallel().AsOrdered().WithDegreeOfParallelism(threads).Select(job => RaceTrial.Run(job.variant, job.start, options, job.seed, whole)).ToList();
+        Console.WriteLine(RaceTable.Summary(name, trials));
+        if (args.Contains("--each")) foreach (var trial in trials) Console.WriteLine(RaceTable.Line(trial));
+    }
+    return 0;
+}
+
 IEnumerable<Variant> Chosen() => Variants.All.Where(v => args.Contains("--held") ? v.Held : !args.Contains("--tuning") || !v.Held).Where(v => Option("--only") is not { } only || v.Name == only);
 
 string? Option(string name) => Array.IndexOf(args, name) is var at and >= 0 && at + 1 < args.Length ? args[at + 1] : null;
@@ -47,7 +63,8 @@ string? Option(string name) => Array.IndexOf(args, name) is var at and >= 0 && a
 int Usage()
 {
     Console.Error.WriteLine("""
-        races  [--tuning | --held] [--only NAME] [--seed N] [--threads N] [--each]   races on variants of both samples from eight starting settings
+        races  [--tuning | --held] [--only NAME] [--seed N] [--threads N] [--plain] [--each]   races on variants of both samples from eight starting settings
+        rules  [--tuning | --held] [--seeds N] [--set NAME] [--each]                  the same, quicker, for several sets of rules
         counts [--tuning | --held] [--only NAME]                                     iterations of the first 60 steps
         """);
     return 2;

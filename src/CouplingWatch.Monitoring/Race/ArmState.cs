@@ -21,6 +21,12 @@ internal sealed class ArmState(int index, CouplingSettings settings, string name
 
     public int? OutRound { get; private set; }
 
+    /// <summary>Left only because others ranked before it.</summary>
+    public bool RunnerUp { get; private set; }
+
+    /// <summary>Iterations saved against arm 0 so far; below 0 when it cost some.</summary>
+    public double Credit { get; set; }
+
     public int StepsRun { get; set; }
 
     public int CappedSteps { get; set; }
@@ -31,8 +37,9 @@ internal sealed class ArmState(int index, CouplingSettings settings, string name
 
     public void Score(int round, double score) => scores[round] = score;
 
-    public void Leave(int round, string why)
+    public void Leave(int round, string why, bool runnerUp = false)
     {
+        RunnerUp = runnerUp;
         In = false;
         OutWhy = why;
         OutRound = round;

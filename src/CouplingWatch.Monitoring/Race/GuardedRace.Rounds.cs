@@ -7,7 +7,7 @@ public sealed partial class GuardedRace
     {
         round++;
         place = -1;
-        var order = arms.Where(a => a.In).Select(a => a.Index).ToArray();
+        var order = arms.Where(a => a.In && (a.Index > 0 || !ArmZeroRests)).Select(a => a.Index).ToArray();
         RoundOrder.Draw(setup.Seed, round, order);
         orders.Add(order);
         NextBlock();
@@ -29,6 +29,7 @@ public sealed partial class GuardedRace
 
     private void EndRound()
     {
+        if (ArmZeroRests) arms[0].Score(round, setup.ScoreBy == Wire.RaceScore.Seconds ? baseline!.MeanSeconds!.Value : baseline!.Mean);
         if (round >= options.RoundsBeforeDropping) DropForScores();
         var left = arms.Count(a => a.Index > 0 && a.In);
         Say(null, "round", $"Round {Text(round)} is complete; {left} challenger{(left == 1 ? "" : "s")} left.");
@@ -47,7 +48,7 @@ public sealed partial class GuardedRace
         if (round >= options.Rounds) return;
         var left = ranked.Where(r => r.Arm.In).OrderBy(r => r.Differences.DefaultIfEmpty(0).Average()).ThenBy(r => r.Arm.Index).ToList();
         foreach (var (arm, differences) in left.Skip((left.Count + 1) / 2))
-            Leave(arm, null, $"not among the better half after round {Text(round)} ({Signed(differences.DefaultIfEmpty(0).Average())} {Unit} a step)");
+            Leave(arm, null, $"not among the better half after round {Text(round)} ({Signed(differences.DefaultIfEmpty(0).Average())} {Unit} a step)", runnerUp: true);
     }
 
     /// <summary>
@@ -67,7 +68,12 @@ public sealed partial class GuardedRace
             return;
         }
         var target = arms[arm];
-        IReadOnlyList<string> commands = arm > 0 && baseline is { AtCap: true } && setup.MayDropHistory ? ["dropHistory"] : [];
+        IReadOnlyList<string> commands = [];
+        if (arm > 0 && baseline is { AtCap: true } && setup.MayDropHistory && (spoilt || !options.RestsAtCap))
+        {
+            commands = ["dropHistory"];
+            spoilt = false;
+        }
         Wish = new RaceWish(arm, target.Settings, commands, $"{setup.Id}: {target.Name} ({why})");
         Say(null, "turn", $"{(arm == 0 ? "The settings in use are" : $"{target.Name} is")} published: {why}.", arm);
     }

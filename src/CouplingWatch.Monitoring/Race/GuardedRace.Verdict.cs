@@ -10,6 +10,8 @@ public sealed partial class GuardedRace
     /// <summary>With fewer rounds than allow it no interval is given; five rounds allow 93.75 %.</summary>
     private const double LeastConfidence = 0.9;
 
+    private const int RoundsOfRunnerUp = 3;
+
     private int watched;
     private int watchedCount;
     private double watchedSum;
@@ -19,9 +21,9 @@ public sealed partial class GuardedRace
 
     private void End()
     {
-        var best = BestSoFar();
+        var best = arms.Where(MayWin).OrderBy(a => a.DifferencesTo(arms[0]).Average()).ThenBy(a => a.Index).FirstOrDefault(Wins) ?? BestSoFar();
         var effect = Effect(best);
-        if (best is not null && best.In && Wins(best))
+        if (best is not null && MayWin(best) && Wins(best))
         {
             State = RaceState.Watching;
             var text = $"{best.Name} is published: {Text(best.MeanBeside(arms[0]))} {Unit} a step against {Text(arms[0].MeanBeside(best))}{Interval(effect)}.";
@@ -38,6 +40,9 @@ public sealed partial class GuardedRace
         else
             Finish("keep", $"Nothing better was found: the best, {best.Name}, took {Text(best.MeanBeside(arms[0]))} {Unit} a step against {Text(arms[0].MeanBeside(best))}{Interval(effect)}. The settings in use stay.", effect);
     }
+
+    private bool MayWin(ArmState arm) => arm.Index > 0 && arm.DifferencesTo(arms[0]).Length > 0
+        && (arm.In || (options.RunnersUpMayWin && arm.RunnerUp && arm.Scores.Count >= RoundsOfRunnerUp));
 
     private bool Wins(ArmState arm)
     {
@@ -98,10 +103,10 @@ public sealed partial class GuardedRace
         watchedSum += setup.ScoreBy == RaceScore.Seconds ? step.Seconds!.Value : step.Count;
         if (watchedCount < options.StepsWatched) return;
         var mean = watchedSum / watchedCount;
-        var limit = arms[0].MeanBeside(winner);
+        var limit = options.FallsBackBeyondWorstRound ? arms[0].Scores.Values.Max() : arms[0].MeanBeside(winner);
         if (mean > limit)
         {
-            FallBack(step.Step, $"its mean over {Text(watchedCount)} steps is {Text(mean)} {Unit} a step, the settings before had {Text(limit)} in the race");
+            FallBack(step.Step, $"its mean over {Text(watchedCount)} steps is {Text(mean)} {Unit} a step, the settings before had {(options.FallsBackBeyondWorstRound ? "at most " : "")}{Text(limit)} in the race");
             return;
         }
         State = RaceState.Finished;

@@ -63,14 +63,14 @@ public sealed partial class GuardedRace
         {
             if (step.Arm > 0 && !step.Step.Converged) capped++;
             if (step.Use == "watched" || (step.Arm == 0 && step.Use == "scored")) continue;
-            var (count, time) = Reference(step.Round);
+            var (count, time) = ArmZeroAround(step.Round);
             iterations += step.Step.Count - count;
             seconds = step.Step.Seconds is { } s && time is { } t ? seconds + s - t : seconds;
         }
         return new RaceCost(iterations, capped, seconds);
     }
 
-    private (double Count, double? Seconds) Reference(int number)
+    private (double Count, double? Seconds) ArmZeroAround(int number)
     {
         var mine = steps.Where(s => s.Arm == 0 && s.Use == "scored" && s.Round <= number).ToList();
         if (mine.Count == 0) return (baseline!.Mean, baseline.MeanSeconds);

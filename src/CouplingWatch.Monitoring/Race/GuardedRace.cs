@@ -25,6 +25,7 @@ public sealed partial class GuardedRace
     private int place;
     private Block block;
     private bool recovering;
+    private bool spoilt;
     private int wanted;
     private int published;
     private int? inForce = 0;
@@ -175,16 +176,20 @@ public sealed partial class GuardedRace
             return;
         }
         State = RaceState.Running;
+        spoilt = baseline.AtCap;
         BeginRound();
     }
 
     private void Run(in RaceStep step, ArmState arm)
     {
         var use = "cost";
-        if (arm.Index > 0 && arm.In && !MayReachCap(arm) && Offence(step) is { } why)
+        var offence = arm.Index > 0 && arm.In && !MayReachCap(arm) ? Offence(step, arm) : null;
+        arm.Credit += Reference - step.Count;
+        if (arm.Index == 0 || !step.Converged) spoilt = true;
+        if (offence is not null)
         {
             Keep(step, arm, use);
-            Remove(arm, step.Step, why);
+            Remove(arm, step.Step, offence);
             return;
         }
         if (arm.Index != block.Arm)
@@ -225,16 +230,22 @@ public sealed partial class GuardedRace
     /// <summary>Where arm 0 is at the cap, the discarded step of a challenger's block may reach it too.</summary>
     private bool MayReachCap(ArmState arm) => baseline!.AtCap && arm.Index == block.Arm && block.Discarded < options.Discarded;
 
-    private string? Offence(in RaceStep step)
+    /// <summary>Iterations a step of arm 0 as last known.</summary>
+    private double Reference => setup.ScoreBy == RaceScore.Iterations && arms[0].Scores.Count > 0 ? arms[0].Scores.Last().Value : baseline!.Mean;
+
+    private bool ArmZeroRests => options.RestsAtCap && baseline is { AtCap: true };
+
+    private string? Offence(in RaceStep step, ArmState arm)
     {
         if (step.Outcome != StepOutcome.Converged)
             return $"step {Text(step.Step)} under it {(step.Outcome == StepOutcome.Capped ? "reached the cap" : step.Outcome == StepOutcome.Rejected ? "was rejected" : "failed")} after {Text(step.Count)} iterations";
+        if (options.GuardOnCredit && arm.Credit >= step.Count - Reference) return null;
         return step.Count > baseline!.Limit ? $"step {Text(step.Step)} under it took {Text(step.Count)} iterations, more than the guard's {Text(baseline.Limit)}" : null;
     }
 
-    private void Leave(ArmState arm, int? step, string why)
+    private void Leave(ArmState arm, int? step, string why, bool runnerUp = false)
     {
-        arm.Leave(round, why);
+        arm.Leave(round, why, runnerUp);
         Say(step, "out", $"{arm.Name} is out: {why}.", arm.Index);
     }
 
@@ -246,6 +257,11 @@ public sealed partial class GuardedRace
         if (arms.All(a => a.Index == 0 || !a.In))
         {
             End();
+            return;
+        }
+        if (ArmZeroRests)
+        {
+            NextBlock();
             return;
         }
         recovering = true;
