@@ -14,8 +14,5 @@ internal static class RuleSets
         ("fall-back worst round", RaceOptions.Plain with { FallsBackBeyondWorstRound = true }),
         ("all four", new RaceOptions()),
         ("four, win 0.95/0.6", new RaceOptions { WinRatio = 0.95, WinShare = 0.6 }),
-        ("four, win 0.95/0.75", new RaceOptions { WinRatio = 0.95 }),
-        ("four, 4 scored", new RaceOptions { Scored = 4 }),
-        ("four, 4 scored, 0.95/0.6", new RaceOptions { Scored = 4, WinRatio = 0.95, WinShare = 0.6 }),
     ];
 }
