@@ -63,5 +63,5 @@ public static class LedgerRows
     public static IReadOnlyList<string> Columns { get; } = ["born in step", "iteration", "share", "kept or left out"];
 
     public static IReadOnlyList<IReadOnlyList<string>> Table(IReadOnlyList<LedgerRow> rows) =>
-        [.. rows.Select(r => new[] { Numbers.Count(r.Column.Birth.Step), Numbers.Count(r.Column.Birth.Iteration), Numbers.Power(r.Column.Share, 3), r.Kept ? "kept" : "left out" })];
+        [.. rows.Select(r => new[] { Numbers.Count(r.Column.Birth.Step), Numbers.Count(r.Column.Birth.Iteration), r.Column.Share > 0 ? Numbers.Power(r.Column.Share, 3) : Numbers.Dash, r.Kept ? "kept" : "left out" })];
 }

@@ -21,7 +21,7 @@ public sealed partial class SecantLedger : IDisposable
     private double threshold;
     private string slider = "";
     private string typed = "";
-    private bool tries, wrong, all;
+    private bool tries, wrong, all, measured;
     private int drawn, room;
 
     /// <summary>The basis in force.</summary>
@@ -181,6 +181,7 @@ public sealed partial class SecantLedger : IDisposable
     /// <summary>Rows and the room kept for them: it grows in eights and never shrinks while the page is open, so nothing below jumps.</summary>
     private void Lay()
     {
+        measured = Basis.Columns.Any(c => c.Share > 0);
         rows = LedgerRows.Of(Basis, Shown, threshold, Lowest);
         drawn = all ? rows.Count : Math.Min(rows.Count, Newest);
         room = Math.Max(Math.Min(room, all ? int.MaxValue : Newest), (drawn + 7) / 8 * 8);

@@ -21,7 +21,7 @@ public sealed record Answer(StateMark Mark, string Say)
         var lacking = run.NotJudged.FirstOrDefault(n => checks.Contains(n.Check));
         return lacking is null
             ? new Answer(StateMark.NotJudged, otherwise)
-            : new Answer(StateMark.NotJudged, $"Not judged: {lacking.Why}.") { Notes = lacking.Send.Length > 0 ? [$"For it, send {lacking.Send}."] : [] };
+            : new Answer(StateMark.NotJudged, $"Not judged: {lacking.Why}.") { Notes = ToSend(lacking) is { Length: > 0 } send ? [$"For it, send {send}."] : [] };
     }
 
     /// <summary>A phrase as a sentence of its own: a capital at its head, a full stop at its end.</summary>
@@ -31,10 +31,21 @@ public sealed record Answer(StateMark Mark, string Say)
         return plain.Length == 0 ? "" : char.ToUpperInvariant(plain[0]) + plain[1..] + (plain[^1] is '.' or '!' or '?' ? "" : ".");
     }
 
+    /// <summary>The open alert of one of the checks that speaks of the step in progress; null when none does.</summary>
+    public static Alert? OpenNow(RunDetail run, params string[] checks) =>
+        Open(run, a => Math.Max(a.Step, a.LastStep) >= run.Summary.Step, checks);
+
     /// <summary>The open alert of one of the checks, worst first; null when all is quiet.</summary>
-    public static Alert? Open(RunDetail run, params string[] checks) =>
+    public static Alert? Open(RunDetail run, params string[] checks) => Open(run, _ => true, checks);
+
+    /// <summary>"why; send what", the second half left out where nothing could be sent for it.</summary>
+    public static string ToSend(NotJudged lacking) => SendsNothing(lacking) ? "" : lacking.Send;
+
+    private static bool SendsNothing(NotJudged lacking) => lacking.Send.Length == 0 || lacking.Send.StartsWith("nothing", StringComparison.OrdinalIgnoreCase);
+
+    private static Alert? Open(RunDetail run, Func<Alert, bool> holds, string[] checks) =>
         run.Summary.OpenAlerts
-            .Where(a => checks.Contains(a.Check) && a.State is not (AlertState.Returned or AlertState.Closed or AlertState.Shelved))
+            .Where(a => checks.Contains(a.Check) && a.State is not (AlertState.Returned or AlertState.Closed or AlertState.Shelved) && holds(a))
             .OrderByDescending(a => a.Severity).FirstOrDefault();
 }
 

@@ -23,7 +23,7 @@ public static class ConvergenceAnswer
     {
         var last = governing.Points[^1];
         var code = run.Summary.Verdict.Code;
-        if (code is "diverging" or "diverged" || Answer.Open(run, "divergence") is not null)
+        if (code is "diverging" or "diverged" || Answer.OpenNow(run, "divergence") is not null)
             return (StateMark.Diverging, run.Rate is { Factor: > 1 and var grows } ? $"No: the residual grows {Numbers.Sig(grows, 2)}-fold an iteration." : "No: it diverges.");
         if (!ResidualPathChart.Judged(governing))
             return (StateMark.NotJudged, "Not judged: no target is known, so only the norm is drawn.");
@@ -43,7 +43,7 @@ public static class ConvergenceAnswer
                 : (StateMark.Learning, $"Likely: done at iteration {Math.Round(at).ToString("0", CultureInfo.InvariantCulture)}, by its rate alone.");
         }
         if (last.Iteration < 2) return (StateMark.Learning, "Too early to say: the forecast begins with the third residual.");
-        if (Answer.Open(run, "slow", "stall", "noise-floor", "oscillation") is { } alert) return (StateMarks.Of(alert), "No: it does not get nearer to its target.");
+        if (Answer.OpenNow(run, "slow", "stall", "noise-floor", "oscillation") is { } alert) return (StateMarks.Of(alert), "No: it does not get nearer to its target.");
         return run.Rate is { Factor: >= 1 } ? (StateMark.LosingTime, "Not now: the residual does not fall.") : (StateMark.Learning, "Open: no forecast can be given.");
     }
 
@@ -55,7 +55,7 @@ public static class ConvergenceAnswer
         if (far.Length > 0)
             notes.Add(Answer.Sentence(string.Join("; ", far.OrderByDescending(p => p.Governs).Select(p => p.Points[^1].Need <= 1e-9 ? $"{p.Field} has met its target" : $"{p.Field} has {Numbers.Fixed(p.Points[^1].Need, 1)} decades to go"))));
         if (run.StepForecast is { Basis: "paths" } && governing.BandSteps > 0) notes.Add($"Foretold from {Numbers.Count(governing.BandSteps, "earlier step")}.");
-        if (Answer.Open(run, "slow", "stall", "noise-floor", "oscillation", "divergence") is { } alert) notes.Add(Answer.Sentence(alert.Text));
+        if (Answer.OpenNow(run, "slow", "stall", "noise-floor", "oscillation", "divergence") is { } alert) notes.Add(Answer.Sentence(alert.Text));
         return notes;
     }
 

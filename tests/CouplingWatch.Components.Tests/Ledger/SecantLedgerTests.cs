@@ -159,6 +159,15 @@ public class SecantLedgerTests : BunitContext
     }
 
     [Fact]
+    public void Where_shares_are_not_sent_the_columns_stand_without_bars_and_without_a_threshold()
+    {
+        var ledger = Ledger(of: basis with { Source = "reported", Columns = [.. basis.Columns.Select(c => c with { Share = 0 })] });
+        Assert.Empty(ledger.FindAll("input"));
+        Assert.Equal(basis.Kept, ledger.FindAll("rect.kept").Count);
+        Assert.Contains("40 of 45 columns left out, as the code reports", ledger.Markup, StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void Births_are_named_by_step_and_iteration_newest_first()
     {
         var births = Ledger().FindAll(".ledger-births text").Select(t => t.TextContent).ToArray();

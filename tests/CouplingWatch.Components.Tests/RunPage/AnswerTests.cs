@@ -61,6 +61,22 @@ public class AnswerTests
     }
 
     [Fact]
+    public void An_alert_of_an_earlier_step_does_not_speak_for_the_step_in_progress()
+    {
+        var run = HandDetails.TwoFields(Now);
+        var stall = HandAlerts.Of("gate-wall-2", "stall", Severity.Warning, 2, 9, 40, Now, "step 2 stalled", []);
+        Assert.DoesNotContain("Step 2 stalled.", ConvergenceAnswer.Of(run with { Summary = run.Summary with { OpenAlerts = [stall] } }).Notes);
+        Assert.Contains("Step 2 stalled.", ConvergenceAnswer.Of(run with { Summary = run.Summary with { OpenAlerts = [stall with { LastStep = 17 }] } }).Notes);
+    }
+
+    [Fact]
+    public void What_nothing_can_be_sent_for_asks_for_nothing()
+    {
+        Assert.Equal("", Answer.ToSend(new NotJudged("error-estimate", "it is known for fixed relaxation only", "nothing: this method has no such estimate")));
+        Assert.Equal("beats", Answer.ToSend(new NotJudged("hang", "no beats are sent", "beats")));
+    }
+
+    [Fact]
     public void A_starved_basis_is_answered_no_with_what_is_left()
     {
         var answer = BasisAnswer.Of(HandDetails.Starved(Now));
