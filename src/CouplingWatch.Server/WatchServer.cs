@@ -65,7 +65,7 @@ public static class WatchServer
             try { await app.StartAsync(); }
             catch (IOException e) when (e.InnerException is AddressInUseException or SocketException)
             {
-                throw new StartException($"--urls {string.Join(';', app.Urls)}: {e.Message} Choose another port, for example --urls http://localhost:5081.", e);
+                throw new StartException($"--urls {app.Configuration["urls"]}: {e.Message} Choose another port, for example --urls http://localhost:5081.", e);
             }
             await app.WaitForShutdownAsync();
             return 0;

@@ -19,5 +19,6 @@ internal static class OwnSiteOnly
     });
 
     private static bool IsOwn(string origin, HttpRequest request) =>
-        Uri.TryCreate(origin, UriKind.Absolute, out var from) && HostString.FromUriComponent(from).Equals(request.Host) && from.Scheme == request.Scheme;
+        Uri.TryCreate(origin, UriKind.Absolute, out var from) && from.Scheme == request.Scheme
+        && from.Host.Equals(request.Host.Host, StringComparison.OrdinalIgnoreCase) && from.Port == (request.Host.Port ?? (request.IsHttps ? 443 : 80));
 }

@@ -12,8 +12,8 @@ internal static class AdviceEndpoints
     public static void MapAdvice(this IEndpointRouteBuilder api)
     {
         api.MapGet("/runs/{run}/advice", ListAsync).Named("ListAdvice", "Standing advice with what it rests on.").Produces<Page<Advice>>().Faults(404);
-        api.MapPost("/runs/{run}/advice/{id}/adopt", AdoptAsync).Named("AdoptAdvice", "Publishes the settings revision that the advice shows.").Accepts<AdoptRequest>("application/json").Produces<SettingsRevision>().Faults(400, 404, 409, 422);
-        api.MapPost("/runs/{run}/advice/{id}/dismiss", DismissAsync).Named("DismissAdvice", "Not taken, with a reason.").Accepts<DismissRequest>("application/json").Produces(204).Faults(400, 404);
+        api.MapPost("/runs/{run}/advice/{id}/adopt", AdoptAsync).Named("AdoptAdvice", "Publishes the settings revision that the advice shows.").Takes<AdoptRequest>().Produces<SettingsRevision>().Faults(400, 404, 409, 422);
+        api.MapPost("/runs/{run}/advice/{id}/dismiss", DismissAsync).Named("DismissAdvice", "Not taken, with a reason.").Takes<DismissRequest>().Produces(204).Faults(400, 404);
     }
 
     private static async Task<IResult> ListAsync(string run, RunRegistry runs, CancellationToken cancel) => runs.TryFind(run, out var host)

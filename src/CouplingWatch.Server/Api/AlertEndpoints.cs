@@ -15,7 +15,7 @@ internal static class AlertEndpoints
     {
         api.MapGet("/alerts", ListAsync).Named("ListAlerts", "Alerts, newest first; filters state, run and campaign.").Produces<Page<Alert>>().Faults(400);
         api.MapPost("/alerts/{id}/acknowledge", AcknowledgeAsync).Named("AcknowledgeAlert", "Somebody has it.").Produces<Alert>().Faults(404, 409);
-        api.MapPost("/alerts/{id}/shelve", ShelveAsync).Named("ShelveAlert", "Put aside for some minutes, with a reason.").Accepts<ShelveRequest>("application/json").Produces<Alert>().Faults(400, 404, 409);
+        api.MapPost("/alerts/{id}/shelve", ShelveAsync).Named("ShelveAlert", "Put aside for some minutes, with a reason.").Takes<ShelveRequest>().Produces<Alert>().Faults(400, 404, 409);
         api.MapPost("/alerts/{id}/unshelve", UnshelveAsync).Named("UnshelveAlert", "Taken up again before its time.").Produces<Alert>().Faults(404, 409);
     }
 

@@ -17,7 +17,7 @@ internal static class ExaminationEndpoint
     private static readonly SemaphoreSlim AtOnce = new(Math.Max(1, Environment.ProcessorCount - 1));
 
     public static void MapExaminations(this IEndpointRouteBuilder api) =>
-        api.MapPost("/examinations", PostAsync).Named("Examine", "Judges an uploaded recording without keeping it.").Accepts<string>("application/x-ndjson").Produces<Examination>().Faults(400, 413, 415);
+        api.MapPost("/examinations", PostAsync).Named("Examine", "Judges an uploaded recording without keeping it.").Takes<string>(RecordsEndpoint.MediaTypes[0]).Produces<Examination>().Faults(400, 413, 415);
 
     private static async Task<IResult> PostAsync(string? run, HttpContext context, RunSurroundings around)
     {

@@ -11,7 +11,7 @@ internal static class Interface
         var api = app.MapGroup("/api").DisableAntiforgery();
         api.MapPost("/runs/{run}/records", RecordsEndpoint.PostAsync)
             .Named("PostRecords", "Takes records of a run (NDJSON); answers when they are durable.")
-            .Accepts<string>(RecordsEndpoint.MediaTypes[0]).Produces<RecordsAnswer>().Faults(400, 409, 413, 415, 429, 503, 507);
+            .Takes<string>(RecordsEndpoint.MediaTypes[0]).Produces<RecordsAnswer>().Faults(400, 409, 413, 415, 429, 503, 507);
         api.MapRuns();
         api.MapSettings();
         api.MapAdvice();

@@ -18,9 +18,9 @@ internal static class SettingsEndpoints
     public static void MapSettings(this IEndpointRouteBuilder api)
     {
         api.MapGet("/runs/{run}/settings", GetAsync).Named("GetSettings", "The newest revision; ETag is its number, 304 when unchanged, ?wait=SECONDS holds the answer. With the run's own ?instance= it counts as picked up.").Produces<SettingsRevision>().Produces(304).Faults(400, 404);
-        api.MapPut("/runs/{run}/settings", PutAsync).Named("PublishSettings", "Publishes a revision made from the one in If-Match.").Accepts<SettingsProposal>("application/json").Produces<SettingsRevision>().Faults(400, 404, 409, 412, 422, 428);
+        api.MapPut("/runs/{run}/settings", PutAsync).Named("PublishSettings", "Publishes a revision made from the one in If-Match.").Takes<SettingsProposal>().Produces<SettingsRevision>().Faults(400, 404, 409, 412, 422, 428);
         api.MapGet("/runs/{run}/settings/history", HistoryAsync).Named("GetSettingsHistory", "Every revision: who, why, applied from which step, effect.").Produces<Page<SettingsRevision>>().Faults(404);
-        api.MapPost("/runs/{run}/ask-to-stop", AskToStopAsync).Named("AskToStop", "Publishes the command stop; the run decides.").Accepts<StopRequest>("application/json").Produces<SettingsRevision>().Faults(400, 404, 409);
+        api.MapPost("/runs/{run}/ask-to-stop", AskToStopAsync).Named("AskToStop", "Publishes the command stop; the run decides.").Takes<StopRequest>().Produces<SettingsRevision>().Faults(400, 404, 409);
     }
 
     private static async Task<IResult> GetAsync(string run, int? wait, string? instance, HttpContext context, RunRegistry runs, TimeProvider time)

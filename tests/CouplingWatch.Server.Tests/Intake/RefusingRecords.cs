@@ -66,6 +66,7 @@ public class RefusingRecords
         await using var watch = await StartAsync();
         var pad = new string('x', 8 * 1024 * 1024 - 200);
         using var content = new ChunkedLines([Open(), .. Enumerable.Range(1, 9).Select(i => Remark(i, pad))]);
+        content.Headers.ContentType = new MediaTypeHeaderValue("application/x-ndjson");
         var problem = await FaultAsync(await watch.Http.PostAsync("/api/runs/leaf-1/records", content, TestContext.Current.CancellationToken), 413, "too-large");
         var next = problem["next"]!.GetValue<long>();
         Assert.InRange(next, 8, 9);
