@@ -19,8 +19,13 @@ public sealed partial class RunMonitor
         {
             case SilentEvent e:
                 state.At = e.At;
+                state.Quiet = true;
                 findings.Add(SilentCheck.Late(e.SecondsSilent, e.LimitSeconds));
                 Report();
+                break;
+            case BackEvent:
+                state.Quiet = false;
+                changes.Add(new Change(ChangeKind.Verdict));
                 break;
             case HangEvent e:
                 state.At = e.At;

@@ -30,7 +30,7 @@ public sealed partial class RunMonitor
         findings.Clear();
         state.Notes.Clear();
         foreach (var listener in listeners) listener.Record(state, record);
-        var gap = record.Seq >= 0 ? state.Cadence.Observe(record.At, received) : null;
+        var gap = record.Seq >= 0 ? state.Cadence.Observe(record is OpenRecord ? null : record.At, received) : null;
         if (record is IterationRecord iteration) OnIteration(iteration, gap);
         else
         {

@@ -27,6 +27,9 @@ internal sealed class RunState(string run)
     /// <summary>The recording was said to end here.</summary>
     public bool Ended { get; set; }
 
+    /// <summary>The server's clock says that no record comes; until one comes again.</summary>
+    public bool Quiet { get; set; }
+
     /// <summary>The settings in force.</summary>
     public CouplingSettings Settings { get; set; } = new();
 

@@ -60,7 +60,7 @@ internal static class SummaryWriter
     {
         var run = monitor.State;
         if (run.Close is { } close) return close.Outcome.ToString().ToLowerInvariant();
-        return run.Ended || monitor.AlertBook.Open(Checks.CheckIds.Silent) is not null ? "quiet" : "live";
+        return run.Ended || run.Quiet ? "quiet" : "live";
     }
 
     public static IReadOnlyList<PassPair> Passes(RunState run)

@@ -34,6 +34,9 @@ internal sealed partial class RunHost
         }, cancel);
     }
 
+    /// <summary>How long ago a run was heard of is told by this server's clock, not by the sender's.</summary>
+    private RunSummary Received(RunSummary summary) => summary with { LastRecordAt = signs.LastReceived };
+
     private RunSummary Unjudged(Verdict verdict) => new()
     {
         Run = Run,
@@ -45,7 +48,6 @@ internal sealed partial class RunHost
         Labels = Open?.Labels ?? new Dictionary<string, string>(),
         Verdict = verdict,
         AllocationEndsAt = Open?.AllocationEndsAt,
-        LastRecordAt = signs.Last,
         NextSeq = sequence.Next,
         Revision = Revision,
     };

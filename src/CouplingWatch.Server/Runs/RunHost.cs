@@ -71,9 +71,6 @@ internal sealed partial class RunHost : IAsyncDisposable
     /// <summary>The server's clock, as it goes into the journal.</summary>
     public DateTimeOffset Now => around.Now();
 
-    /// <summary>When a record or a beat came last; null before the first.</summary>
-    public DateTimeOffset? LastSign => signs.Last;
-
     /// <summary>Writes a batch down, judges it and answers what comes next. A second fault is impossible: it stops at the first.</summary>
     public async Task<IntakeAnswer> AcceptAsync(IReadOnlyList<IncomingRecord> batch, string? instance, CancellationToken cancel = default)
     {

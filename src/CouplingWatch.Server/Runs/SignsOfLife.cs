@@ -11,14 +11,15 @@ internal sealed class SignsOfLife
     private bool beats;
     private string? hanging;
 
-    /// <summary>When a record or a beat came last, by the server's clock; null before the first.</summary>
-    public DateTimeOffset? Last => lastSign;
+    /// <summary>When a journaled record came last, by the server's clock; null before the first.</summary>
+    public DateTimeOffset? LastReceived { get; private set; }
 
     public bool Silent { get; private set; }
 
     /// <summary>Takes note of a journaled record; whether a silence ends with it is asked of <see cref="EndOfSilence"/> before.</summary>
     public void Record(StreamRecord record, DateTimeOffset received)
     {
+        LastReceived = received;
         lastRecord = received;
         lastSign = received;
         if (record is IterationRecord) hanging = null;

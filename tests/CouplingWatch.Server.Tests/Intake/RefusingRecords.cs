@@ -98,7 +98,8 @@ public class RefusingRecords
         await watch.AcceptAsync("leaf-1", Open());
         journal.Hold();
         var waiting = Enumerable.Range(0, 40).Select(_ => watch.PostAsync("leaf-1", Remark(1))).ToList();
-        var refused = await await Task.WhenAny(waiting);
+        await watch.UntilAsync(() => Task.FromResult(waiting.Count(w => w.IsCompleted) == 8));
+        var refused = await waiting.First(w => w.IsCompleted);
         Assert.Equal("1", refused.Headers.RetryAfter?.ToString());
         await FaultAsync(refused, 429, "busy");
         journal.Release();

@@ -20,8 +20,9 @@ public class WatchingTheClock
         Assert.DoesNotContain("silent", await ChecksAsync(watch));
         watch.Time.Advance(TimeSpan.FromSeconds(61) + ClockWatch.Interval);
         await watch.UntilAsync(async () => (await ChecksAsync(watch)).Contains("silent"));
+        Assert.Equal("quiet", await StateAsync(watch));
         await watch.AcceptAsync("leaf-1", Remark(lines.Count));
-        Assert.DoesNotContain("silent", await ChecksAsync(watch));
+        Assert.Equal("live", await StateAsync(watch));
         Assert.Equal(2, await EventsAsync(watch));
     }
 
@@ -74,6 +75,8 @@ public class WatchingTheClock
 
     private static async Task<IReadOnlyList<string>> ChecksAsync(WatchUnderTest watch) =>
         [.. (await watch.GetAsync("/api/alerts?run=leaf-1&state=open"))["items"]!.AsArray().Select(a => a!["check"]!.GetValue<string>())];
+
+    private static async Task<string> StateAsync(WatchUnderTest watch) => (await watch.GetAsync("/api/runs/leaf-1"))["summary"]!["state"]!.GetValue<string>();
 
     private static async Task<int> EventsAsync(WatchUnderTest watch)
     {
