@@ -1,1 +1,10 @@
-return;
+using System.CommandLine;
+using CouplingWatch.Cli.Check;
+using CouplingWatch.Cli.Examine;
+
+var root = new RootCommand("Judges residual streams of coupled runs without a server, and talks to one.")
+{
+    ExamineCommand.Create(),
+    CheckCommand.Create(),
+};
+return await root.Parse(args).InvokeAsync();
