@@ -90,7 +90,7 @@ public static class ResidualPathChart
 
     private static string Factor(double? decades) => decades is { } d ? Numbers.Sig(Math.Pow(10, d)) : Numbers.Dash;
 
-    private static string Exact(double value) => double.IsFinite(value) ? value.ToString("R", CultureInfo.InvariantCulture) : Numbers.Sig(value);
+    private static string Exact(double value) => double.IsFinite(value) ? SettingsForm.SettingKind.Plain(value) : Numbers.Sig(value);
 
     private static double? Height(PathPoint p, bool judged)
     {

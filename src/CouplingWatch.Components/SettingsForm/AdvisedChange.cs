@@ -1,4 +1,3 @@
-using System.Globalization;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Components.SettingsForm;
@@ -33,8 +32,8 @@ public static class AdvisedChange
     private static IEnumerable<(SettingKind Kind, string Text)> Values(Advice advice)
     {
         if (SettingKind.Named(advice.Setting) is { } kind && (advice.To ?? Number(advice)) is { } text && kind.Make(text) is not null) yield return (kind, text);
-        if (advice is { Setting: "filterRule", Value: { } threshold }) yield return (SettingKind.Named("filterThreshold")!, threshold.ToString("R", CultureInfo.InvariantCulture));
+        if (advice is { Setting: "filterRule", Value: { } threshold }) yield return (SettingKind.Named("filterThreshold")!, SettingKind.Plain(threshold));
     }
 
-    private static string? Number(Advice advice) => advice.Value?.ToString("R", CultureInfo.InvariantCulture);
+    private static string? Number(Advice advice) => advice.Value is { } v ? SettingKind.Plain(v) : null;
 }

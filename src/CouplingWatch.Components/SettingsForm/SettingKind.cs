@@ -43,6 +43,14 @@ public sealed record SettingKind(string Name, string Words, bool AltersResult, F
         var text => text,
     };
 
+    /// <summary>A number to its last digit as one types it: "0.1", "1e-7".</summary>
+    public static string Plain(double value)
+    {
+        var text = value.ToString("R", CultureInfo.InvariantCulture);
+        var at = text.IndexOf('E', StringComparison.Ordinal);
+        return at < 0 ? text : $"{text[..at]}e{int.Parse(text.AsSpan(at + 1), NumberStyles.AllowLeadingSign, CultureInfo.InvariantCulture).ToString(CultureInfo.InvariantCulture)}";
+    }
+
     /// <summary>A number to its last digit: "0.1", "2.5 × 10⁻⁵", "10⁻⁷".</summary>
     /// <param name="power">As a power of ten even where it is not small.</param>
     public static string Exact(double value, bool power = false)
@@ -58,7 +66,7 @@ public sealed record SettingKind(string Name, string Words, bool AltersResult, F
         double.TryParse(text, NumberStyles.Float, CultureInfo.InvariantCulture, out var v) ? v : ThresholdText.Parse(text);
 
     private static SettingKind Number(string name, string words, bool alters, Func<CouplingSettings, double?> get, Func<double, CouplingSettings> make) =>
-        new(name, words, alters, s => get(s)?.ToString("R", CultureInfo.InvariantCulture), t => Read(t) is { } v && double.IsFinite(v) ? make(v) : null);
+        new(name, words, alters, s => get(s) is { } v ? Plain(v) : null, t => Read(t) is { } v && double.IsFinite(v) ? make(v) : null);
 
     private static SettingKind Count(string name, string words, bool alters, Func<CouplingSettings, int?> get, Func<int, CouplingSettings> make) =>
         new(name, words, alters, s => get(s)?.ToString(CultureInfo.InvariantCulture), t => int.TryParse(t, NumberStyles.AllowLeadingSign, CultureInfo.InvariantCulture, out var v) ? make(v) : null) { Whole = true };

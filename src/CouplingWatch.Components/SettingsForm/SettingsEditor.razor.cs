@@ -13,6 +13,8 @@ public sealed partial class SettingsEditor
     private string? problem;
     private bool busy;
     private object? started;
+    private bool arrives;
+    private ElementReference form;
 
     [Inject] private IWatchFeed Feed { get; set; } = default!;
 
@@ -38,6 +40,7 @@ public sealed partial class SettingsEditor
         if (draft is null || !ReferenceEquals(started, Start))
         {
             started = Start;
+            arrives = true;
             draft = new SettingsDraft(InForce, Adjustable, Latest);
             Start?.Invoke(draft);
             problem = null;
@@ -49,6 +52,20 @@ public sealed partial class SettingsEditor
     {
         changes = draft.Changes;
         return true;
+    }
+
+    protected override async Task OnAfterRenderAsync(bool firstRender)
+    {
+        if (!arrives) return;
+        arrives = false;
+        try
+        {
+            await form.FocusAsync();
+        }
+        catch (Exception e) when (e is Microsoft.JSInterop.JSException or Microsoft.JSInterop.JSDisconnectedException)
+        {
+            // The form was closed again before it could take the focus.
+        }
     }
 
     private async Task PublishAsync()

@@ -92,7 +92,7 @@ public class ResidualPathChartTests
     {
         var path = Deflection with { Points = [new PathPoint(0, 1.234567891e-5, 2)], Band = [new BandPoint(0, 1, 3), new BandPoint(1, 0, 2)] };
         var rows = ResidualPathChart.Rows(path);
-        Assert.Equal(["0", "1.234567891E-05", "100", "10.0", "1,000"], rows[0]);
+        Assert.Equal(["0", "1.234567891e-5", "100", "10.0", "1,000"], rows[0]);
         Assert.Equal(["1", "—", "—", "1.00", "100"], rows[1]);
     }
 

@@ -131,7 +131,7 @@ public class RunViewTests : BunitContext
     {
         var page = Page(HandDetails.Starved(HandLock.Now));
         page.Find(".will .press.first").Click();
-        Assert.Equal("1E-07", page.Find("#set-filterThreshold").GetAttribute("value"));
+        Assert.Equal("1e-7", page.Find("#set-filterThreshold").GetAttribute("value"));
         Assert.Contains("10⁻²", page.Find(".oldnew").TextContent, StringComparison.Ordinal);
         Assert.Contains("10⁻⁷", page.Find(".oldnew .proposed").TextContent, StringComparison.Ordinal);
         page.Find("#reason").Input("the basis is starved");
@@ -145,6 +145,8 @@ public class RunViewTests : BunitContext
         var revision = new SettingsRevision { Revision = 1, Settings = HandDetails.Settings(FilterRule.PivotRatio, 1e-7), By = "day shift", At = HandLock.Now, Reason = "the basis is starved" };
         Change(page, d => d.With(revision));
         page.WaitForAssertion(() => Assert.Equal(3, page.FindAll(".steps4 .wait").Count));
+        Assert.Contains("Revision 1 is on its way", page.Find(".will").TextContent, StringComparison.Ordinal);
+        Assert.Empty(page.FindAll(".will .press.first"));
         Follow(page, revision with { State = RevisionState.PickedUp }, 2);
         Follow(page, revision with { State = RevisionState.Applied, FromStep = 17 }, 1);
         Follow(page, revision with { State = RevisionState.Applied, FromStep = 17, Effect = new RevisionEffect(8.0, 10, 4.1, 6) }, 0);
@@ -169,7 +171,7 @@ public class RunViewTests : BunitContext
         page.Find(".will .press.first").Click();
         page.Find("form").Submit();
         Assert.Contains("revision 2 came first", page.Find("[role=alert].problem").TextContent, StringComparison.Ordinal);
-        Assert.Equal("1E-07", page.Find("#set-filterThreshold").GetAttribute("value"));
+        Assert.Equal("1e-7", page.Find("#set-filterThreshold").GetAttribute("value"));
     }
 
     [Fact]
