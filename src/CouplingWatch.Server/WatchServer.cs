@@ -6,6 +6,7 @@ using CouplingWatch.Server.Api;
 using CouplingWatch.Server.Host;
 using CouplingWatch.Server.Live;
 using CouplingWatch.Server.Site;
+using CouplingWatch.Storage.Sqlite;
 using Microsoft.AspNetCore.Connections;
 using Microsoft.Extensions.DependencyInjection.Extensions;
 
@@ -35,7 +36,7 @@ public static class WatchServer
         builder.Services.AddWatchServer(options);
         builder.Services.AddWatchSite();
         build?.Invoke(builder);
-        builder.Services.TryAddSingleton<IJournal>(_ => new MemoryJournal());
+        builder.Services.TryAddSingleton<IJournal>(s => new SqliteJournal(options.Data, s.GetService<TimeProvider>()));
 
         var app = builder.Build();
         Announcement.Announce(app, options);

@@ -15,7 +15,7 @@ internal static class AlertActs
     /// <summary>The alerts of every run, newest first.</summary>
     public static async Task<IReadOnlyList<Alert>> AlertsAsync(this RunRegistry runs, CancellationToken cancel)
     {
-        var lists = await Task.WhenAll(runs.All.Where(h => h.NextSeq > 0).Select(h => h.AlertsAsync(cancel)));
+        var lists = await Task.WhenAll(runs.All.Select(h => h.AlertsAsync(cancel)));
         return [.. lists.SelectMany(l => l).OrderByDescending(a => a.RaisedAt).ThenBy(a => a.Id, StringComparer.Ordinal)];
     }
 

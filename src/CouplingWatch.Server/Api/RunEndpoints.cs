@@ -26,7 +26,7 @@ internal static class RunEndpoints
     {
         if (Paging.Refuse(limit) is { } refusal) return refusal;
         var labels = request.Query.Where(q => q.Key.StartsWith("label.", StringComparison.Ordinal)).Select(q => (Key: q.Key[6..], Value: q.Value.ToString())).ToList();
-        var summaries = await Task.WhenAll(runs.All.Where(h => h.NextSeq > 0).Select(h => h.SummaryAsync(cancel)));
+        var summaries = await Task.WhenAll(runs.All.Select(h => h.SummaryAsync(cancel)));
         var chosen = summaries
             .Where(s => (campaign is null || s.Campaign == campaign) && (state is null || s.State == state))
             .Where(s => labels.TrueForAll(l => s.Labels.TryGetValue(l.Key, out var value) && value == l.Value));

@@ -13,11 +13,11 @@ internal sealed class WatchFeed(RunRegistry runs, ChangeSignals signals, LiveUpd
     /// <summary>Who stands behind what is done on a page while the server has no keys.</summary>
     public const string By = "operator";
 
-    public DateTimeOffset? LastRecordAt => updates.LastRecordAt;
+    public DateTimeOffset? LastRecordAt => updates.LastRecordAt ?? runs.All.Max(h => h.LastReceived);
 
     public async Task<IReadOnlyList<RunSummary>> BoardAsync(CancellationToken cancel = default)
     {
-        var summaries = await Task.WhenAll(runs.All.Where(h => h.NextSeq > 0).Select(h => h.SummaryAsync(cancel)));
+        var summaries = await Task.WhenAll(runs.All.Select(h => h.SummaryAsync(cancel)));
         return [.. summaries.Order(BoardOrder.ByStake)];
     }
 

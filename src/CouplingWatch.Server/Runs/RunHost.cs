@@ -19,6 +19,7 @@ internal sealed partial class RunHost : IAsyncDisposable
     public const int WaitingBatches = 32;
     private readonly RunSurroundings around;
     private readonly ILogger log;
+    private readonly bool journaled;
     private readonly Channel<Func<ValueTask>> work = Channel.CreateUnbounded<Func<ValueTask>>(new UnboundedChannelOptions { SingleReader = true });
     private readonly Task loop;
     private RunSequence sequence;
@@ -33,8 +34,10 @@ internal sealed partial class RunHost : IAsyncDisposable
     private int revision;
     private int waitingBatches;
 
-    public RunHost(string run, RunSurroundings around)
+    /// <param name="journaled">The journal has records of it.</param>
+    public RunHost(string run, RunSurroundings around, bool journaled = false)
     {
+        this.journaled = journaled;
         Run = run;
         this.around = around;
         log = around.Log;
@@ -67,6 +70,12 @@ internal sealed partial class RunHost : IAsyncDisposable
 
     /// <summary>Seq expected next, as of the latest batch; read from any thread.</summary>
     public long NextSeq => sequence.Next;
+
+    /// <summary>True once a record is in the journal, also while it was not read yet.</summary>
+    public bool Begun => journaled || sequence.Next > 0;
+
+    /// <summary>When a journaled record came last; null before the first.</summary>
+    public DateTimeOffset? LastReceived => signs.LastReceived;
 
     /// <summary>The server's clock, as it goes into the journal.</summary>
     public DateTimeOffset Now => around.Now();

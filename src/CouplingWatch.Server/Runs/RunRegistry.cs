@@ -13,17 +13,19 @@ internal sealed class RunRegistry(RunSurroundings around) : IAsyncDisposable
 
     public RunSurroundings Around => around;
 
-    /// <summary>Every run, by name.</summary>
-    public IReadOnlyList<RunHost> All => [.. hosts.Values.Select(h => h.Value).OrderBy(h => h.Run, StringComparer.Ordinal)];
+    /// <summary>Every run that has records, by name.</summary>
+    public IReadOnlyList<RunHost> All => [.. hosts.Values.Select(h => h.Value).Where(h => h.Begun).OrderBy(h => h.Run, StringComparer.Ordinal)];
 
     public bool TryFind(string run, [NotNullWhen(true)] out RunHost? host)
     {
-        host = hosts.TryGetValue(run, out var found) ? found.Value : null;
+        host = hosts.TryGetValue(run, out var found) && found.Value.Begun ? found.Value : null;
         return host is not null;
     }
 
     /// <summary>The host of a run that exists or is about to begin.</summary>
-    public RunHost Begin(string run) => hosts.GetOrAdd(run, static (name, around) => new Lazy<RunHost>(() => new RunHost(name, around)), around).Value;
+    public RunHost Begin(string run) => Host(run, journaled: false);
+
+    private RunHost Host(string run, bool journaled) => hosts.GetOrAdd(run, name => new Lazy<RunHost>(() => new RunHost(name, around, journaled))).Value;
 
     /// <summary>Stands up a host for every run of the journal; answers which of them are still open.</summary>
     public async Task<IReadOnlyList<RunHost>> FindJournaledAsync(CancellationToken cancel)
@@ -32,7 +34,7 @@ internal sealed class RunRegistry(RunSurroundings around) : IAsyncDisposable
         foreach (var run in await around.Journal.RunsAsync(cancel))
         {
             if (run.NextSeq == 0) continue;
-            var host = Begin(run.Run);
+            var host = Host(run.Run, journaled: true);
             if (!await IsClosedAsync(run, cancel)) live.Add(host);
         }
         return live;
