@@ -24,6 +24,8 @@ internal static class RecordsEndpoint
         if (!RunName.IsAllowed(run)) return RunName.Refuse(run);
         if (RefuseBody(context.Request) is { } refusal) return refusal;
         var host = runs.TryFind(run, out var known) ? known : null;
+        // The first post after a start waits until the run was read from the journal: only then are the lengths of its vectors known.
+        if (host is not null) await host.EnsureLoadedAsync(context.RequestAborted);
         var answer = new IntakeAnswer(host?.NextSeq ?? 0, host?.Revision ?? 0);
         var reader = new RecordReader { Shape = host?.Shape };
         var batch = new List<IncomingRecord>();
