@@ -42,6 +42,4 @@ public partial class AlertItem
         await OnShelve.InvokeAsync((Alert, shelf));
         shelving = false;
     }
-
-    private static string Capital(string text) => text.Length == 0 ? text : char.ToUpperInvariant(text[0]) + text[1..];
 }

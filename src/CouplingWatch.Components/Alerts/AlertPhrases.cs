@@ -31,11 +31,18 @@ public static class AlertPhrases
         };
     }
 
-    /// <summary>The alert's sentence, to go on after a colon.</summary>
-    public static string Goes(string text)
+    /// <summary>What to do where the monitor has no move to propose; null: look at the run.</summary>
+    public static string? WithoutAdvice(Alert alert)
     {
-        ArgumentNullException.ThrowIfNull(text);
-        return text.Length > 1 && char.IsUpper(text[0]) && !char.IsUpper(text[1]) ? char.ToLowerInvariant(text[0]) + text[1..] : text;
+        ArgumentNullException.ThrowIfNull(alert);
+        return alert.Check switch
+        {
+            "silent" => "Look at the machine and at the job.",
+            "hang" => "Look at the solver named.",
+            "false-claim" => "The code stops on another tolerance than it declares: compare the two.",
+            "drift" => "Ask what changed: load, contact, mesh, time step.",
+            _ => null,
+        };
     }
 
     /// <summary>What is lost if nobody does anything, from the run's own stake.</summary>

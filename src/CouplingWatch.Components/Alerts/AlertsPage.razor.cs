@@ -89,7 +89,10 @@ public sealed partial class AlertsPage : IDisposable
         {
             var head = group.Head;
             if (iterations.GetValueOrDefault(head.Id) is not { } kept || kept.LastSeq != head.LastSeq)
+            {
                 iterations[head.Id] = new(head.LastSeq, await LatestIterationsAsync(head));
+                StateHasChanged();
+            }
             var ids = string.Join(' ', head.Advice.Concat(group.AlsoSeen.SelectMany(a => a.Advice)));
             if (ids.Length == 0 || (advice.TryGetValue(head.Id, out var known) && known.Key == ids)) continue;
             var all = await Feed.RunAsync(head.Run) is { } detail ? detail.Advice : [];

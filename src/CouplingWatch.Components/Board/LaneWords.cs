@@ -10,7 +10,8 @@ public static class LaneWords
     public static (string Lead, string Tail) End(RunSummary run, DateTimeOffset now, TimeZoneInfo? zone = null)
     {
         ArgumentNullException.ThrowIfNull(run);
-        if (run.Forecast is not { } f) return LaneOrder.Closed(run) ? ("Ended", ".") : ("No end can be foretold yet", ".");
+        if (run.Forecast is not { } f)
+            return !LaneOrder.Closed(run) ? ("No end can be foretold yet", ".") : run.LastRecordAt is { } at ? ($"Ended {Times.Near(at, now, zone)}", $"{Early(run, at)}.") : ("Ended", ".");
         if (LaneOrder.Closed(run) || run.State == "quiet" || f.Ends is not { } ends) return Split(f.Text);
         var band = f is { EndsEarly: { } early, EndsLate: { } late } && late > early ? $" ({Band(early, late, ends, now, zone)})" : "";
         return ($"Ends {Times.Near(ends, now, zone)}", band + Allocation(run, f, ends, now, zone));
@@ -61,6 +62,9 @@ public static class LaneWords
             ? $"; {Chance(chance)} that it misses the allocation, {when}."
             : $", {Times.Span(allocation - ends)} before the allocation.";
     }
+
+    private static string Early(RunSummary run, DateTimeOffset at) =>
+        run.AllocationEndsAt is { } allocation && allocation > at ? $", {Times.Span(allocation - at)} before its allocation" : "";
 
     private static string DoNotFit(RunSummary run, RunForecast f)
     {

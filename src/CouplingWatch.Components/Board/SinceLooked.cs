@@ -10,7 +10,7 @@ public sealed record Happening(string Run, string Phrase, DateTimeOffset At);
 public static class SinceLooked
 {
     /// <summary>At most this many are told; the rest is counted.</summary>
-    public const int Most = 8;
+    public const int Most = 6;
 
     public static IReadOnlyList<Happening> Of(IReadOnlyList<RunSummary> runs, IReadOnlyList<Alert> alerts, DateTimeOffset lookedAt, DateTimeOffset now, TimeZoneInfo? zone = null)
     {

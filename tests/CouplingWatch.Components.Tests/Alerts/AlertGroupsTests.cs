@@ -54,12 +54,6 @@ public sealed class AlertGroupsTests
         Assert.Null(EvidenceWords.Number([], "a"));
     }
 
-    [Theory]
-    [InlineData("The residual grows.", "the residual grows.")]
-    [InlineData("IQN-ILS stalls.", "IQN-ILS stalls.")]
-    [InlineData("", "")]
-    public void A_sentence_goes_on_after_the_colon(string text, string goes) => Assert.Equal(goes, AlertPhrases.Goes(text));
-
     [Fact]
     public void What_is_lost_otherwise_is_the_runs_own_stake()
     {
