@@ -34,8 +34,11 @@ public sealed partial class RunMonitor
                 break;
             case PublishedEvent e:
                 settings.Published(e);
+                OnRacePublished(e);
                 changes.Add(new Change(ChangeKind.Settings, e.Revision.ToString(CultureInfo.InvariantCulture)));
                 break;
+            case RaceStartedEvent e: OnRaceStarted(e); break;
+            case RaceStoppedEvent e: OnRaceStopped(e); break;
             case PickedUpEvent e:
                 settings.PickedUp(e.Revision);
                 changes.Add(new Change(ChangeKind.Settings, e.Revision.ToString(CultureInfo.InvariantCulture)));

@@ -52,6 +52,7 @@ public sealed partial class RunMonitor
             case BeatRecord: state.BeatsSeen = true; break;
             case CheckpointRecord checkpoint: state.Checkpoint = checkpoint; break;
             case CloseRecord close:
+                EndRace("the run ended");
                 state.Close = close;
                 changes.Add(new Change(ChangeKind.Close));
                 changes.Add(new Change(ChangeKind.Verdict));
@@ -108,6 +109,7 @@ public sealed partial class RunMonitor
         var step = state.Step;
         var fields = state.Fields;
         if (state.Steady && settings.Pending is { } pending && (pending.FromIteration ?? record.Iteration) <= record.Iteration) PutInForce(pending, record.Step);
+        races.Pass(record, step.Received == 0);
         state.Iterations++;
         state.Level = Math.Max(state.Level, record.Vectors is not null || record.Sketch is not null ? 3 : record.Basis is not null ? 2 : record.Magnitudes is not null ? 1 : 0);
         state.Times.Observe(record, state.Parallel);
@@ -170,7 +172,13 @@ public sealed partial class RunMonitor
         var rejected = outcome == StepOutcome.Rejected;
         if (rejected) state.SendsAttempts = true;
         alerts.Settle(rejected, step.Ordinal, state.Seq, changes);
-        if (!rejected)
+        var onTrial = races.OnTrial(closed.Revision);
+        if (onTrial && closed.Outcome == StepOutcome.Failed)
+        {
+            foreach (var check in checks.Where(c => c.Id == CheckIds.Divergence)) check.StepClosed(state, closed, findings);
+            Report();
+        }
+        if (!rejected && !onTrial)
         {
             foreach (var check in checks) check.StepClosed(state, closed, findings);
             state.Remember(closed);
@@ -180,6 +188,7 @@ public sealed partial class RunMonitor
             state.Learning.StepDone();
         }
         foreach (var listener in listeners) listener.StepClosed(state, closed);
+        RaceStepClosed(closed);
         findings.Clear();
         RenewAdvice(true);
         changes.Add(new Change(ChangeKind.Step));
@@ -189,6 +198,7 @@ public sealed partial class RunMonitor
     private void OnApplied(AppliedRecord record)
     {
         settings.Applied(record);
+        OnRaceRefused(record);
         changes.Add(new Change(ChangeKind.Settings, record.Revision.ToString(CultureInfo.InvariantCulture)));
         if (record.Settings is null || state.Steady || !state.Step.InProgress || record.FromStep > state.Step.Step) return;
         PutInForce(record, state.Step.Step);
@@ -203,7 +213,9 @@ public sealed partial class RunMonitor
         state.RelaxationSent = null;
         if (settings.Drops(record.Revision)) state.Basis.DropHistory();
         foreach (var listener in listeners) listener.SettingsInForce(state, fromStep);
-        if (changed) Restart("applied", RestartCause.Settings);
+        var ofRace = races.GoesOn && races.Owns(record.Revision);
+        races.SettingsInForce(record);
+        if (changed && (!ofRace || WinnerInForce(record.Revision))) Restart("applied", RestartCause.Settings);
     }
 
     private void OnResize(ResizeRecord record)
@@ -211,6 +223,7 @@ public sealed partial class RunMonitor
         state.Fields.Declare(record.Fields);
         if (state.Step.InProgress) state.Step.Incomplete = true;
         state.Basis.Resize(state, record.BasisMapped);
+        EndRace("the interface changed its size");
         Restart("resize", RestartCause.Resize);
     }
 
@@ -255,6 +268,7 @@ public sealed partial class RunMonitor
         foreach (var finding in findings)
         {
             if (finding.Check is CheckIds.NoiseFloor or CheckIds.Polluted) state.Basis.Taint(step.Ordinal);
+            if (GoesToRaceLog(finding)) continue;
             alerts.Report(finding, place, held, changes);
         }
         alerts.Relate(step.Ordinal);

@@ -35,6 +35,7 @@ public sealed partial class RunMonitor
         Options = options ?? new MonitorOptions();
         Options.Validate();
         state = new RunState(run);
+        races = new Race.RaceBook(run);
         alerts = new AlertBook(run);
         advice = new AdviceBook(run);
         checks = CheckList.All(Options);

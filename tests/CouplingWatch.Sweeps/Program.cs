@@ -46,7 +46,7 @@ int Rules()
     var seeds = int.Parse(Option("--seeds") ?? "3", CultureInfo.InvariantCulture);
     var threads = int.Parse(Option("--threads") ?? "1", CultureInfo.InvariantCulture);
     var whole = new WholeRuns();
-    foreach (var (name, options) in RuleSets.All.Where(r => Option("--set") is not { } only || r.Name.Contains(only, StringComparison.Ordinal)))
+    foreach (var (name, options) in RuleSets.All.Where(r => Option("--set") is not { } only || only.Split('|').Any(o => r.Name.Contains(o, StringComparison.Ordinal))))
     {
         var jobs = from variant in Chosen() from start in Starts.All from seed in Enumerable.Range(1, seeds) select (variant, start, seed);
         var trials = jobs.AsParallel().AsOrdered().WithDegreeOfParallelism(threads).Select(job => RaceTrial.Run(job.variant, job.start, options, job.seed, whole)).ToList();

@@ -13,6 +13,9 @@ internal static class RuleSets
         ("guard on credit", RaceOptions.Plain with { GuardOnCredit = true }),
         ("fall-back worst round", RaceOptions.Plain with { FallsBackBeyondWorstRound = true }),
         ("all four", new RaceOptions()),
-        ("four, win 0.95/0.6", new RaceOptions { WinRatio = 0.95, WinShare = 0.6 }),
+        ("later: discard 3", new RaceOptions { DiscardedLater = 3 }),
+        ("later: score 5", new RaceOptions { ScoredLater = 5 }),
+        ("later: discard 3, score 5", new RaceOptions { DiscardedLater = 3, ScoredLater = 5 }),
+        ("later 3/5, win 0.95/0.6", new RaceOptions { DiscardedLater = 3, ScoredLater = 5, WinRatio = 0.95, WinShare = 0.6 }),
     ];
 }

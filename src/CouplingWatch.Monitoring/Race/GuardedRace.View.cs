@@ -84,7 +84,7 @@ public sealed partial class GuardedRace
         RaceState.Waiting => $"Waiting: {Text(options.StepsBefore - before.Count)} more complete steps under the settings in use before the first round.",
         RaceState.Running => Wish is not null || inForce != block.Arm
             ? $"Round {Text(round)} of at most {Text(options.Rounds)}: waiting for the run to take over {(block.Arm == 0 ? "the settings in use" : arms[block.Arm].Name)}."
-            : $"Round {Text(round)} of at most {Text(options.Rounds)}: {(block.Arm == 0 ? "the settings in use" : arms[block.Arm].Name)} in turn, {Text(block.Scored)} of {Text(options.Scored)} steps scored.",
+            : $"Round {Text(round)} of at most {Text(options.Rounds)}: {(block.Arm == 0 ? "the settings in use" : arms[block.Arm].Name)} in turn, {Text(block.Scored)} of {Text(ScoredNow)} steps scored.",
         RaceState.Watching => $"{Verdict!.Text} Watched for {Text(options.StepsWatched)} steps, {Text(watchedCount)} so far.",
         _ => Verdict!.Text,
     };

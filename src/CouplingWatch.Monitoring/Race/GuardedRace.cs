@@ -206,7 +206,7 @@ public sealed partial class GuardedRace
             NextBlock();
             return;
         }
-        if (block.Discarded < options.Discarded)
+        if (block.Discarded < DiscardedNow)
         {
             block.Discarded++;
             Keep(step, arm, "discarded");
@@ -220,7 +220,7 @@ public sealed partial class GuardedRace
         Keep(step, arm, "scored");
         if (block.Scored++ == 0) block.From = step.Step;
         block.Sum += setup.ScoreBy == RaceScore.Seconds ? step.Seconds!.Value : step.Count;
-        if (block.Scored < options.Scored) return;
+        if (block.Scored < ScoredNow) return;
         var score = block.Sum / block.Scored;
         arm.Score(round, score);
         blocks.Add((round, new RaceBlock(arm.Index, score, block.From, step.Step)));
@@ -228,10 +228,14 @@ public sealed partial class GuardedRace
     }
 
     /// <summary>Where arm 0 is at the cap, the discarded step of a challenger's block may reach it too.</summary>
-    private bool MayReachCap(ArmState arm) => baseline!.AtCap && arm.Index == block.Arm && block.Discarded < options.Discarded;
+    private bool MayReachCap(ArmState arm) => baseline!.AtCap && arm.Index == block.Arm && block.Discarded == 0;
 
     /// <summary>Iterations a step of arm 0 as last known.</summary>
     private double Reference => setup.ScoreBy == RaceScore.Iterations && arms[0].Scores.Count > 0 ? arms[0].Scores.Last().Value : baseline!.Mean;
+
+    private int DiscardedNow => round > options.RoundsBeforeDropping ? options.DiscardedLater : options.Discarded;
+
+    private int ScoredNow => round > options.RoundsBeforeDropping ? options.ScoredLater : options.Scored;
 
     private bool ArmZeroRests => options.RestsAtCap && baseline is { AtCap: true };
 

@@ -21,6 +21,12 @@ public sealed record RaceOptions
     /// <summary>Steps of a block that are scored; 3.</summary>
     public int Scored { get; init; } = 3;
 
+    /// <summary>Steps of a block not scored from the third round on, when few arms are left and long histories need time to fill; 1.</summary>
+    public int DiscardedLater { get; init; } = 1;
+
+    /// <summary>Steps of a block scored from the third round on; 3.</summary>
+    public int ScoredLater { get; init; } = 3;
+
     /// <summary>The guard's limit is max(factor · p90, p90 + margin); 1.5.</summary>
     public double GuardFactor { get; init; } = 1.5;
 

@@ -31,6 +31,7 @@ internal static class DetailWriter
             Adjustable = run.Open?.Adjustable ?? new(),
             Revisions = monitor.Revisions,
             Advice = monitor.Advice,
+            Race = monitor.Race,
             Solvers = run.Open?.Solvers ?? [],
             Fields = [.. run.Fields.All.Select(f => f.Declared)],
             Time = run.Step.Time ?? run.LastClosed?.Time,
