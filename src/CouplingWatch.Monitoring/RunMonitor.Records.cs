@@ -1,6 +1,7 @@
 using System.Globalization;
 using CouplingWatch.Monitoring.Alerts;
 using CouplingWatch.Monitoring.Checks;
+using CouplingWatch.Monitoring.Checks.Hang;
 using CouplingWatch.Monitoring.Checks.Silent;
 using CouplingWatch.Monitoring.Forecast;
 using CouplingWatch.Monitoring.State;
@@ -30,7 +31,7 @@ public sealed partial class RunMonitor
         findings.Clear();
         state.Notes.Clear();
         foreach (var listener in listeners) listener.Record(state, record);
-        var gap = record.Seq >= 0 ? state.Cadence.Observe(record is OpenRecord ? null : record.At, received) : null;
+        var gap = record.Seq >= 0 ? state.Cadence.Observe(record is OpenRecord ? null : record.At, received, (record as CheckpointRecord)?.Seconds ?? 0) : null;
         if (record is IterationRecord iteration) OnIteration(iteration, gap);
         else
         {
@@ -49,9 +50,14 @@ public sealed partial class RunMonitor
             case AppliedRecord applied: OnApplied(applied); break;
             case ResizeRecord resize: OnResize(resize); break;
             case SkippedRecord: RecordsMissing(); break;
-            case BeatRecord: state.BeatsSeen = true; break;
+            case BeatRecord beat:
+                state.BeatsSeen = true;
+                if (HangCheck.Of(state, beat) is { } hang) findings.Add(hang);
+                Report();
+                break;
             case CheckpointRecord checkpoint: state.Checkpoint = checkpoint; break;
             case CloseRecord close:
+                CloseLast();
                 EndRace("the run ended");
                 state.Close = close;
                 changes.Add(new Change(ChangeKind.Close));
@@ -101,6 +107,7 @@ public sealed partial class RunMonitor
         state.Basis.BeginStep();
         state.Traces.Begin(record.Step, attempt, state.Fields.All.Count);
         state.Remaining = null;
+        state.Misled = false;
         ObserveTimeStep(record.TimeStep);
     }
 
@@ -159,6 +166,15 @@ public sealed partial class RunMonitor
         var declared = state.Fields.Governing is { Inferred: false };
         var converged = step.Done || (!atCap && !declared);
         Close(converged ? StepOutcome.Converged : StepOutcome.Capped, step.Iteration + 1);
+    }
+
+    /// <summary>A code that sends no verdicts closes its last step by closing the run: converged if done, capped at the cap; unfinished otherwise.</summary>
+    private void CloseLast()
+    {
+        var step = state.Step;
+        if (!step.InProgress || state.SendsStepRecords) return;
+        if (step.Done) Close(StepOutcome.Converged, step.Iteration + 1);
+        else if (step.Iteration + 1 >= state.Settings.IterationCap) Close(StepOutcome.Capped, step.Iteration + 1);
     }
 
     private void Close(StepOutcome outcome, int iterations)
@@ -244,7 +260,7 @@ public sealed partial class RunMonitor
         state.Learning.Restart(since);
         state.ForgetHistory();
         alerts.SettingsChanged();
-        advice.SettingsChanged();
+        advice.SettingsChanged(state.Seq);
         foreach (var check in checks) check.Restart(state, cause);
     }
 

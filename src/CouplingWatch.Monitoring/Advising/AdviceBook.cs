@@ -14,6 +14,7 @@ internal sealed class AdviceBook(string run)
     private readonly List<Advice> given = [];
     private readonly HashSet<string> dismissed = [];
     private List<Advice> standing = [];
+    private long since;
     private IReadOnlyList<Advice>? listed;
 
     /// <summary>What stands now, best first.</summary>
@@ -62,15 +63,16 @@ internal sealed class AdviceBook(string run)
         return true;
     }
 
-    public void SettingsChanged()
+    public void SettingsChanged(long seq)
     {
+        since = seq;
         dismissed.Clear();
         standing = [];
     }
 
     private Advice Give(RunState state, Move move, List<string> because)
     {
-        var earlier = standing.Find(a => KeyOf(a) == move.Key);
+        var earlier = standing.Find(a => KeyOf(a) == move.Key) ?? given.FindLast(a => a.Seq >= since && KeyOf(a) == move.Key);
         var (adjustable, value) = Adjustability.Of(state, move);
         var advice = new Advice
         {

@@ -108,6 +108,17 @@ internal sealed class RunState(string run)
     /// <summary>The highest level of data seen: 0 residuals, 1 magnitudes, 2 basis, 3 vectors or sketch.</summary>
     public int Level { get; set; }
 
+    /// <summary>Columns of earlier steps misled the first update of the step in progress.</summary>
+    public bool Misled { get; set; }
+
+    /// <summary>How many of the latest five steps were misled so.</summary>
+    public int MisledSteps => System.Numerics.BitOperations.PopCount(misled & 31);
+
+    /// <summary>Converged steps in a row that met neither the noise floor nor a polluted basis.</summary>
+    public int SoundSteps { get; private set; }
+
+    private uint misled;
+
     public ClosedStep? LastClosed { get; private set; }
 
     /// <summary>The newest checkpoint.</summary>
@@ -179,6 +190,8 @@ internal sealed class RunState(string run)
             Fields.ForgetAttempt();
             return;
         }
+        SoundSteps = step.Converged && !Basis.IsTainted(step.Ordinal) ? SoundSteps + 1 : 0;
+        misled = (misled << 1) | (Misled ? 1u : 0);
         StepsComplete++;
         IterationsInSteps += step.Iterations;
         if (step.Converged)

@@ -91,7 +91,8 @@ internal sealed class DriftCheck(DriftOptions options) : ICheck
         sum = Math.Max(0, sum + (step.Iterations - mean) / deviation - options.Allowance);
         if (!(sum > options.Limit) || !latest.IsFull || run.Learning.Holds) return;
         var now = Robust.Median(latest, Latest);
-        if (now >= Math.Max(options.LeastRatio * median, median + options.LeastIncrease)) findings.Add(Dearer(now));
+        if (now < Math.Max(options.LeastRatio * median, median + options.LeastIncrease) || !Stays()) return;
+        findings.Add(Dearer(now));
     }
 
     /// <summary>Steps of a time step far from the baseline's do not compare with it; when they stay, a new baseline is due.</summary>
@@ -105,6 +106,15 @@ internal sealed class DriftCheck(DriftOptions options) : ICheck
         }
         if (++otherTimeSteps >= Latest) Restart(run, RestartCause.Settings);
         return true;
+    }
+
+    /// <summary>Periodic physics comes back to its cheap steps; a drift does not: at most a tenth of the latest steps are as cheap as the baseline.</summary>
+    private bool Stays()
+    {
+        var cheap = 0;
+        for (var i = 0; i < latest.Count; i++)
+            if (latest[i] <= median) cheap++;
+        return cheap <= Latest / 10;
     }
 
     private void SetBaseline()

@@ -25,13 +25,15 @@ internal sealed class FalseClaimCheck(FalseClaimOptions options) : ICheck
 
     public void StepClosed(RunState run, in ClosedStep step, List<Finding> findings)
     {
-        if (!step.Converged || !run.SendsStepRecords || step.LastNeed is not { } need || !(need > Math.Log10(options.AllowedRatio))) return;
-        var governing = run.Fields.Governing;
-        if (governing is null || governing.Inferred) return;
-        var ratio = Math.Pow(10, need);
-        var evidence = new JsonObject { ["field"] = governing.Name, ["ratio"] = ratio, ["residual"] = governing.Residual, ["tolerance"] = governing.Tolerance };
+        if (!step.Converged || !run.SendsStepRecords || !step.Complete) return;
+        FieldState? worst = null;
+        foreach (var field in run.Fields.All)
+            if (field.Sent && !field.Inferred && field.Need is { } need && !(need <= worst?.Need)) worst = field;
+        if (worst is null || !(worst.Need > Math.Log10(options.AllowedRatio))) return;
+        var ratio = Math.Pow(10, worst.Need.Value);
+        var evidence = new JsonObject { ["field"] = worst.Name, ["ratio"] = ratio, ["residual"] = worst.Residual, ["tolerance"] = worst.Tolerance };
         findings.Add(new Finding(Id, Severity.Warning,
-            $"Step {step.Step} was called converged with the residual of {governing.Name} at {Say.Number(governing.Residual)}, {Say.Number(ratio)} times the declared tolerance of {Say.Number(governing.Tolerance ?? 0)}.",
+            $"Step {step.Step} was called converged with the residual of {worst.Name} at {Say.Number(worst.Residual)}, {Say.Number(ratio)} times the declared tolerance of {Say.Number(worst.Tolerance ?? 0)}.",
             evidence));
     }
 

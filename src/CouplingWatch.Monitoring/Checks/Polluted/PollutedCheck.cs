@@ -15,6 +15,8 @@ public sealed record PollutedOptions
     public const double DefaultKeptBelow = 0.7;
     public const int DefaultBroken = 4;
     public const double DefaultFellDecades = 1;
+    public const int DefaultSoundSteps = 5;
+    public const int DefaultMisledSteps = 2;
 
     /// <summary>An update promises something when it leaves less than this share of the residual uncovered; 0…1.</summary>
     public double PromisedBelow { get; init; } = DefaultPromisedBelow;
@@ -25,12 +27,19 @@ public sealed record PollutedOptions
     /// <summary>A step whose residual fell by this many decades already is not polluted; 0…20.</summary>
     public double FellDecades { get; init; } = DefaultFellDecades;
 
+    /// <summary>Sound steps before from which on a misled first update speaks of a changed problem; 1…1000.</summary>
+    public int SoundSteps { get; init; } = DefaultSoundSteps;
+    /// <summary>… unless so many of the latest five steps were misled already; 0…6.</summary>
+    public int MisledSteps { get; init; } = DefaultMisledSteps;
+
     internal void Validate(OptionFaults faults)
     {
         faults.Range("Polluted.PromisedBelow", PromisedBelow, 0, 1);
         faults.Range("Polluted.KeptBelow", KeptBelow, 0, 10);
         faults.Range("Polluted.Broken", Broken, 1, PollutedCheck.Latest);
         faults.Range("Polluted.FellDecades", FellDecades, 0, 20);
+        faults.Range("Polluted.SoundSteps", SoundSteps, 1, 1000);
+        faults.Range("Polluted.MisledSteps", MisledSteps, 0, 6);
     }
 }
 
@@ -43,7 +52,7 @@ internal sealed class PollutedCheck(PollutedOptions options) : ICheck
 
     public void Iteration(RunState run, List<Finding> findings)
     {
-        if (run.Step.Done || run.Step.HasNotFinite) return;
+        if (run.Step.Done || run.Step.HasNotFinite || Changed(run)) return;
         foreach (var group in run.Basis.Groups)
         {
             if (!Holds(group, run.Step.Iteration, out var broken)) continue;
@@ -62,6 +71,12 @@ internal sealed class PollutedCheck(PollutedOptions options) : ICheck
     }
 
     public NotJudged? Lacks(RunState run) => BasisLack.Of(run, Id);
+
+    /// <summary>
+    /// After sound steps, a step whose very first update is misled by their columns meets another problem, not noise: noise is brought by steps that ran into it.
+    /// Such a step is the business of <c>stale</c>; when it goes on for more than two steps, both may speak.
+    /// </summary>
+    private bool Changed(RunState run) => run.Misled && run.SoundSteps >= options.SoundSteps && run.MisledSteps < options.MisledSteps;
 
     /// <summary>The promises of the iterations before the latest one are the ones that can be told.</summary>
     private bool Holds(GroupBasis group, int iteration, out int broken)

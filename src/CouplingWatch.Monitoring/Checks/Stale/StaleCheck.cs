@@ -14,8 +14,10 @@ namespace CouplingWatch.Monitoring.Checks.Stale;
 internal sealed class StaleCheck(StaleOptions options) : ICheck
 {
     private const int Increments = 20;
+    private const int Counts = 30;
 
     private readonly Window increments = new(Increments);
+    private readonly Window earlier = new(Counts);
     private ulong recent;
     private bool suspected;
     private bool noted;
@@ -27,6 +29,7 @@ internal sealed class StaleCheck(StaleOptions options) : ICheck
     {
         if (cause == RestartCause.TimeStep) return;
         increments.Clear();
+        earlier.Clear();
         recent = 0;
     }
 
@@ -42,7 +45,7 @@ internal sealed class StaleCheck(StaleOptions options) : ICheck
         if (step.Last == 1) suspected = Promised(run) || Increment(run);
         if (!suspected || step.Done || run.ConvergedCounts.Count < options.LeastEarlier) return;
         var median = Robust.Median(run.ConvergedCounts, RunState.LatestSteps);
-        if (step.Last + 1 < options.IterationsMore + median) return;
+        if (step.Last + 1 < options.IterationsMore + Usual(median)) return;
         var stale = System.Numerics.BitOperations.PopCount(recent & ((1UL << (options.Within - 1)) - 1)) + 1;
         if (stale >= options.Steps) findings.Add(Stale(run, median, stale));
         else if (!noted) run.Notes.Add($"step {step.Step} looks stale: its first update missed, and it takes {step.Last + 1} iterations and more where {Say.Number(median)} are usual");
@@ -52,6 +55,7 @@ internal sealed class StaleCheck(StaleOptions options) : ICheck
     public void StepClosed(RunState run, in ClosedStep step, List<Finding> findings)
     {
         recent = (recent << 1) | (noted ? 1UL : 0);
+        if (step.Converged && !run.Learning.Holds) earlier.Add(step.Iterations);
         if (!double.IsNaN(run.Step.FirstIncrement) && step.Complete) increments.Add(run.Step.FirstIncrement);
     }
 
@@ -65,16 +69,31 @@ internal sealed class StaleCheck(StaleOptions options) : ICheck
 
     public NotJudged? Lacks(RunState run) => null;
 
+    /// <summary>
+    /// What a step usually takes. Where dear steps came and went before the latest five (a strongly varying load), the dear ones are usual too:
+    /// then it is what four in five of those earlier steps stayed within.
+    /// </summary>
+    private double Usual(double median)
+    {
+        if (earlier.Count < options.LeastEarlier + options.Within) return median;
+        Span<double> counts = stackalloc double[Counts];
+        var n = 0;
+        var dear = 0;
+        for (var i = options.Within; i < earlier.Count; i++)
+        {
+            counts[n++] = earlier[i];
+            if (earlier[i] >= median + options.IterationsMore) dear++;
+        }
+        return dear > options.DearShare * n ? Math.Max(median, Quantile.Of(counts[..n], 1 - options.DearShare)) : median;
+    }
+
     /// <summary>The first update rested on reused columns, promised much and missed by decades.</summary>
     private bool Promised(RunState run)
     {
         foreach (var group in run.Basis.Groups)
         {
-            if (group.Updates.Count == 0) continue;
-            var first = group.Updates[0];
-            if (first.Iteration != run.Step.Iteration - 1 || !first.Made || first.HistoryKept == 0 || double.IsNaN(first.Came)) continue;
-            if (!(first.Uncovered < options.PromisedBelow) || !(first.Came > options.LeftAbove)) continue;
-            var missed = Decades.Log(first.Came) - Decades.Log(first.Uncovered);
+            if (FirstUpdate.Missed(group, options.PromisedBelow, options.LeftAbove) is not { } missed) continue;
+            run.Misled |= missed > options.MisledDecades;
             if (!(missed > options.MissDecades)) continue;
             miss = missed;
             return true;
