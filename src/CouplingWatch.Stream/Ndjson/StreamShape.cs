@@ -64,8 +64,9 @@ public sealed class StreamShape
     {
         if (!groups.TryGetValue(group, out var known)) return this;
         var learned = known;
-        if (vectors is not null && !known.Known) learned = learned with { Length = vectors.Residual.Length, Undeclared = 0 };
-        if (sketch is not null && known.Rows == 0) learned = learned with { Rows = sketch.Rows, Seed = sketch.Seed };
+        // A sketch kept in the place of vectors stands for vectors of its full length.
+        if ((vectors?.Residual.Length ?? sketch?.FullRows) is { } length && !known.Known) learned = learned with { Length = length, Undeclared = 0 };
+        if (sketch is { FullRows: null } && known.Rows == 0) learned = learned with { Rows = sketch.Rows, Seed = sketch.Seed };
         if (learned == known) return this;
         return new StreamShape(new Dictionary<string, GroupShape>(groups, StringComparer.Ordinal) { [group] = learned });
     }

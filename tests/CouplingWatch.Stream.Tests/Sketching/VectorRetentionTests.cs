@@ -52,4 +52,14 @@ public sealed class VectorRetentionTests
         var small = Iteration(3);
         Assert.True(VectorRetention.KeepBody(small, small, received).Equals(received.AsMemory()), "bytes received are kept as they are");
     }
+
+    [Fact]
+    public void A_kept_sketch_fixes_the_length_of_the_vectors_it_stands_for()
+    {
+        var shape = StreamShape.Of([new FieldDeclaration { Name = "a" }]).After(VectorRetention.Keep(Iteration(20000)));
+        Assert.Equal(20000, shape.VectorLength());
+        var reader = new RecordReader { Shape = shape };
+        Assert.NotNull(reader.Read(RecordWriter.Line(Iteration(20000))).Record);
+        Assert.Equal(ProblemCodes.WrongLength, reader.Read(RecordWriter.Line(Iteration(19999))).Problem?.Code);
+    }
 }
