@@ -1,5 +1,6 @@
 using CouplingWatch.Coupling.QuasiNewton;
 using CouplingWatch.Coupling.Relaxation;
+using CouplingWatch.Coupling.Surrogates;
 
 namespace CouplingWatch.Coupling;
 
@@ -11,6 +12,7 @@ namespace CouplingWatch.Coupling;
 public sealed class SteppedCoupling : ICouplingMethod
 {
     private readonly SecantHistory history;
+    private readonly ISurrogate? surrogate;
     private readonly double[] previous;
     private double aitken;
     private int updates;
@@ -19,13 +21,15 @@ public sealed class SteppedCoupling : ICouplingMethod
     /// <param name="size">Length N of the interface vector, 1 or more.</param>
     /// <param name="settings">Settings in force at first.</param>
     /// <param name="historyCapacity">Closed steps whose columns are kept at most, so that the history can be raised later; 0 or more.</param>
-    public SteppedCoupling(int size, MethodSettings settings, int historyCapacity = 40)
+    /// <param name="surrogate">What <see cref="MethodKind.IqnIlsm"/> falls back on outside the secants; without one it is <see cref="MethodKind.IqnIls"/>.</param>
+    public SteppedCoupling(int size, MethodSettings settings, int historyCapacity = 40, ISurrogate? surrogate = null)
     {
         ArgumentOutOfRangeException.ThrowIfLessThan(size, 1);
         ArgumentNullException.ThrowIfNull(settings);
         ArgumentOutOfRangeException.ThrowIfNegative(historyCapacity);
         Size = size;
         Settings = settings.Checked();
+        this.surrogate = surrogate;
         history = new SecantHistory(size, Math.Max(historyCapacity, settings.HistorySteps));
         previous = new double[size];
     }
@@ -82,8 +86,9 @@ public sealed class SteppedCoupling : ICouplingMethod
         {
             MethodKind.Fixed => Relax(Settings.Relaxation, residual, output, next),
             MethodKind.Aitken => Relax(NextAitken(residual), residual, output, next),
-            _ => LeastSquaresUpdate.Try(history, Settings, residual, output, next)
-                ?? Relax(Settings.Relaxation, residual, output, next) with { Left = LeastSquaresUpdate.LeftOut(history, Settings) },
+            MethodKind.IqnIlsm when surrogate is not null => SurrogateUpdate.Run(history, Settings, surrogate, residual, output, next),
+            MethodKind.Mvqn => MultiStepUpdate.Try(history, Settings, residual, output, next) ?? RelaxWithoutColumns(residual, output, next),
+            _ => LeastSquaresUpdate.Try(history, Settings, residual, output, next) ?? RelaxWithoutColumns(residual, output, next),
         };
         residual.CopyTo(previous);
         updates++;
@@ -111,6 +116,9 @@ public sealed class SteppedCoupling : ICouplingMethod
         if (updates > 0) aitken = AitkenFactor.Next(aitken, previous, residual);
         return aitken;
     }
+
+    private UpdateReport RelaxWithoutColumns(ReadOnlySpan<double> residual, ReadOnlySpan<double> output, Span<double> next) =>
+        Relax(Settings.Relaxation, residual, output, next) with { Left = LeastSquaresUpdate.LeftOut(history, Settings) };
 
     private static UpdateReport Relax(double relaxation, ReadOnlySpan<double> residual, ReadOnlySpan<double> output, Span<double> next)
     {

@@ -12,7 +12,7 @@ public sealed record UpdateReport
     /// <summary>Columns that were available but left out of this update by the filter.</summary>
     public IReadOnlyList<ColumnName> Left { get; init; } = [];
 
-    /// <summary>Triangular factor of the used columns, packed by columns (R₀₀, R₀₁, R₁₁, R₀₂, …), in units of the residual.</summary>
+    /// <summary>Triangular factor of the used columns, packed by columns (R₀₀, R₀₁, R₁₁, R₀₂, …), in units of the residual; empty for methods without a single factor.</summary>
     public IReadOnlyList<double> PackedR { get; init; } = [];
 
     /// <summary>Coefficients c with V c ≈ −r, in the order of <see cref="Columns"/>.</summary>

@@ -92,6 +92,20 @@ internal sealed class SecantHistory
         return order;
     }
 
+    /// <summary>The same, one list a step; steps without columns are left out.</summary>
+    public IEnumerable<int[]> OrderByStep(int historySteps)
+    {
+        var newest = columns.Count;
+        for (var i = 0; i <= historySteps && i <= closed.Count; i++)
+        {
+            var count = i == 0 ? live : closed[^i];
+            var order = new int[count];
+            for (var c = 0; c < count; c++) order[c] = newest - 1 - c;
+            newest -= count;
+            if (count > 0) yield return order;
+        }
+    }
+
     public ColumnName Name(int arrival) => columns[arrival].Name;
 
     /// <summary>w of the column at an arrival index.</summary>
