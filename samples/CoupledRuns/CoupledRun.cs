@@ -17,7 +17,7 @@ public sealed class CoupledRun
     private readonly SteppedCoupling coupling;
     private readonly StartExtrapolation start;
     private readonly IterationRecords records;
-    private readonly List<int> counts = [];
+    private readonly Queue<int> counts = [];
     private readonly double[] x, output, residual, next;
     private CouplingSettings settings;
     private double lastMagnitude;
@@ -38,7 +38,7 @@ public sealed class CoupledRun
         this.link = link;
         pacing = new Pacing(clock, plan.Pace);
         settings = plan.Settings;
-        coupling = new SteppedCoupling(problem.Size, settings.Method());
+        coupling = new SteppedCoupling(problem.Size, settings.Method(), surrogate: settings.Surrogate is { } name ? problem.Surrogate(name) : null);
         start = new StartExtrapolation(problem.Size);
         start.Accept(problem.Accepted);
         records = new IterationRecords(problem, plan);
@@ -52,7 +52,10 @@ public sealed class CoupledRun
     public CouplingSettings Settings => settings;
 
     /// <summary>Passes of every finished step, oldest first; at most the latest 4096.</summary>
-    public IReadOnlyList<int> Counts => counts;
+    public IReadOnlyList<int> Counts => [.. counts];
+
+    /// <summary>Finished steps so far.</summary>
+    public int StepCount { get; private set; }
 
     /// <summary>The record this run opens with.</summary>
     public static OpenRecord Open(ICoupledProblem problem, RunPlan plan, DateTimeOffset? at = null)
@@ -136,8 +139,9 @@ public sealed class CoupledRun
             start.Accept(final);
             lastMagnitude = Norm(final);
         }
-        if (counts.Count == 4096) counts.RemoveAt(0);
-        counts.Add(lastIteration + 1);
+        if (counts.Count == 4096) counts.Dequeue();
+        counts.Enqueue(lastIteration + 1);
+        StepCount++;
         link.Send(new StepRecord { Step = step, Iterations = lastIteration + 1, TimeStep = timeStep, Outcome = outcome });
         return outcome;
     }

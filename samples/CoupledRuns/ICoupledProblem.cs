@@ -1,3 +1,4 @@
+using CouplingWatch.Coupling.Surrogates;
 using CouplingWatch.Records;
 
 namespace CoupledRuns;
@@ -34,6 +35,12 @@ public interface ICoupledProblem
 
     /// <summary>Accepts <paramref name="x"/> as the end of the step.</summary>
     void Accept(ReadOnlySpan<double> x);
+
+    /// <summary>A surrogate of the pass by name, or null when there is none of that name. It follows the step in hand.</summary>
+    ISurrogate? Surrogate(string name) => null;
+
+    /// <summary>Wall seconds the surrogate took in the latest update.</summary>
+    double SurrogateSeconds => 0;
 
     /// <summary>Coordinates of one entry of the interface vector, m.</summary>
     double[] PlaceOf(int index);

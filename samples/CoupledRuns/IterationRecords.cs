@@ -26,7 +26,7 @@ internal sealed class IterationRecords(ICoupledProblem problem, RunPlan plan)
             Worst = [Worst(residual)],
             Vectors = plan.SendVectors ? new VectorPair([.. residual], [.. output]) : null,
             Basis = plan.SendVectors && update is { } made && made.Columns.Count + made.Left.Count > 0 ? Basis(made) : null,
-            Surrogate = update?.Surrogate is { } share ? new SurrogateReport(share.Iterations, null, share.Covered) : null,
+            Surrogate = update?.Surrogate is { } share ? new SurrogateReport(share.Iterations, problem.SurrogateSeconds, share.Covered) : null,
         };
     }
 
@@ -39,7 +39,7 @@ internal sealed class IterationRecords(ICoupledProblem problem, RunPlan plan)
     }
 
     private static BasisReport Basis(UpdateReport update) =>
-        new([.. update.Columns.Select(Birth)], [.. update.Left.Select(Birth)], [.. update.PackedR], [.. update.Coefficients]);
+        new([.. update.Columns.Select(Birth)], [.. update.Left.Select(Birth)], update.PackedR.Count > 0 ? [.. update.PackedR] : null, [.. update.Coefficients]);
 
     private static ColumnBirth Birth(ColumnName name) => new(name.Step, name.Iteration, name.Attempt);
 }

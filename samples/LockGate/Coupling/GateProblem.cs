@@ -1,4 +1,5 @@
 using CoupledRuns;
+using CouplingWatch.Coupling.Surrogates;
 using CouplingWatch.Records;
 using LockGate.Leaf;
 using LockGate.Water;
@@ -19,6 +20,7 @@ public sealed class GateProblem : ICoupledProblem
     private readonly double[] velocity, acceleration, faceAcceleration, facePressure, load, steadyLoad;
     private readonly double[] seconds = new double[2];
     private double stepEnd, ground;
+    private GateSurrogate? surrogate;
 
     /// <param name="gate">The case.</param>
     /// <param name="clock">Measures the seconds of each solver.</param>
@@ -107,6 +109,17 @@ public sealed class GateProblem : ICoupledProblem
         leaf.Accept(x);
         Time = stepEnd;
     }
+
+    /// <inheritdoc/>
+    /// <remarks><c>added-mass-diagonal</c> or <c>coarser-mesh</c>.</remarks>
+    public ISurrogate? Surrogate(string name) => surrogate = name switch
+    {
+        "added-mass-diagonal" => new GateSurrogate(gate, leaf, GateSurrogateKind.AddedMassDiagonal, clock),
+        "coarser-mesh" => new GateSurrogate(gate, leaf, GateSurrogateKind.CoarserMesh, clock),
+        _ => null,
+    };
+
+    public double SurrogateSeconds => surrogate?.Seconds ?? 0;
 
     /// <summary>(0, height above the sill, 0): the unknowns lie in pairs, node by node, from the first node above the sill.</summary>
     public double[] PlaceOf(int index) => [0, (index / 2 + 1) * leaf.Shape.ElementLength, 0];

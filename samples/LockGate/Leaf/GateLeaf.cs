@@ -158,6 +158,20 @@ public sealed class GateLeaf
         }
     }
 
+    /// <summary>Change of acceleration per change of deflection at the end of the step, 1/s².</summary>
+    public double AccelerationPerDeflection => 1 / (Beta * timeStep * timeStep);
+
+    /// <summary>Change of the deflection for a change of the load, the seal left out of account.</summary>
+    /// <param name="load">Change of the nodal loads, N per metre of width.</param>
+    /// <param name="x">Receives the change of the deflection, m.</param>
+    public void SolveIncrement(ReadOnlySpan<double> load, Span<double> x)
+    {
+        tangent.CopyFrom(effective);
+        tangent.Factor();
+        load.CopyTo(x);
+        tangent.Solve(x);
+    }
+
     /// <summary>Accepts a deflection as the end of the step.</summary>
     public void Accept(ReadOnlySpan<double> x)
     {

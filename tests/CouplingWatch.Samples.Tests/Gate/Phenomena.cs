@@ -85,10 +85,10 @@ public class Phenomena
     [Fact]
     public async Task A_hard_seal_met_in_motion_ends_a_healthy_run()
     {
-        var (run, link) = await Case.RunAsync(GateCases.Of("hard-seal"), 60);
+        var (run, link) = await Case.RunAsync(GateCases.Of("hard-seal"), 150);
         Assert.InRange(run.Counts.Skip(2).Take(20).Average(), 2.5, 5.5);
         Assert.Equal(CloseOutcome.Diverged, Assert.IsType<CloseRecord>(link.Records[^1]).Outcome);
-        Assert.InRange(run.Counts.Count, 22, 50);
+        Assert.InRange(run.Counts.Count, 60, 130);
     }
 
     [Fact]
