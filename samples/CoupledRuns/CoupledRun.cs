@@ -73,7 +73,8 @@ public sealed class CoupledRun
             Adjustable = plan.Adjustable,
             TimeStep = plan.TimeStep,
             EndTime = plan.Steps == int.MaxValue ? null : plan.TimeStep * plan.Steps,
-            Nodes = 1,
+            Nodes = plan.Nodes,
+            AllocationEndsAt = at is { } opened && plan.AllocationHours is { } hours ? opened.AddHours(hours) : null,
             Labels = plan.Labels,
         };
     }

@@ -38,6 +38,12 @@ public sealed record RunPlan
     /// <summary>Send the vectors r and x̃ (level 3) and the basis (level 2), or norms only.</summary>
     public bool SendVectors { get; init; } = true;
 
+    /// <summary>Nodes the run is said to hold; above 0.</summary>
+    public double Nodes { get; init; } = 1;
+
+    /// <summary>Hours from the opening until the allocation is said to end; null for none.</summary>
+    public double? AllocationHours { get; init; }
+
     public IReadOnlyDictionary<string, string> Labels { get; init; } = new Dictionary<string, string>();
 
     /// <summary>Relaxation, filter rule, threshold and history in their useful ranges; both commands.</summary>

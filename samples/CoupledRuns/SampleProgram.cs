@@ -26,7 +26,7 @@ public static class SampleProgram
         RunSender sender;
         try
         {
-            sender = RunSender.Start(options.Server, options.Run, CoupledRun.Open(problem, plan), new RunSenderOptions { Log = Console.Error.WriteLine });
+            sender = RunSender.Start(options.Server, options.Run, CoupledRun.Open(problem, plan, TimeProvider.System.GetUtcNow()), new RunSenderOptions { Log = Console.Error.WriteLine });
         }
         catch (Exception e) when (e is ArgumentException or IOException)
         {

@@ -36,7 +36,7 @@ public sealed class DemoCampaign(Uri server, DemoOptions options, TimeProvider c
     {
         var (problem, plan) = lane.Make();
         plan = plan with { Pace = lane.Pace * options.Speed };
-        await using var sender = RunSender.Start(server, name, CoupledRun.Open(problem, plan), new RunSenderOptions { Log = text => log($"{name}: {text}"), CloseTimeout = TimeSpan.FromSeconds(4) });
+        await using var sender = RunSender.Start(server, name, CoupledRun.Open(problem, plan, TimeProvider.System.GetUtcNow()), new RunSenderOptions { Log = text => log($"{name}: {text}"), CloseTimeout = TimeSpan.FromSeconds(4) });
         log($"{name}: {plan.Title}");
         var run = new CoupledRun(problem, plan, new SenderLink(sender), clock);
         var outcome = await run.RunAsync(stop);

@@ -11,6 +11,7 @@ internal sealed class RunLog : IRunListener
     public const int Kept = 500;
 
     private readonly Queue<LogEntry> entries = new();
+    private readonly Queue<(long Seq, DateTimeOffset At)> closings = new();
 
     public IReadOnlyCollection<LogEntry> Entries => entries;
 
@@ -40,6 +41,12 @@ internal sealed class RunLog : IRunListener
         if (entries.Count > Kept) entries.Dequeue();
     }
 
+    public void StepClosed(RunState run, in ClosedStep step)
+    {
+        closings.Enqueue((step.Seq, run.At));
+        if (closings.Count > Kept) closings.Dequeue();
+    }
+
     /// <summary>The run's own entries, the alerts and the settings revisions on one time line, newest first.</summary>
     public IReadOnlyList<LogEntry> With(IReadOnlyList<Alert> alerts, IReadOnlyList<SettingsRevision> revisions, int most)
     {
@@ -47,7 +54,7 @@ internal sealed class RunLog : IRunListener
         foreach (var alert in alerts)
         {
             all.Add(new LogEntry(alert.Seq, alert.RaisedAt, "alert", $"{alert.Check}: {alert.Text}", alert.Step));
-            if (alert.ClosedSeq is { } closed) all.Add(new LogEntry(closed, null, "closed", $"{alert.Check} closed; last seen in step {alert.LastStep}", alert.LastStep));
+            if (alert.ClosedSeq is { } closed) all.Add(new LogEntry(closed, TimeOf(closed), "closed", $"{alert.Check} closed; last seen in step {alert.LastStep}", alert.LastStep));
             if (alert.AcknowledgedBy is { } by) all.Add(new LogEntry(alert.Seq, alert.AcknowledgedAt, "alert", $"{alert.Check} acknowledged by {by}", alert.Step));
         }
         foreach (var revision in revisions)
@@ -57,6 +64,14 @@ internal sealed class RunLog : IRunListener
             all.Add(new LogEntry(long.MaxValue, revision.At, "settings", $"revision {revision.Revision} published{(revision.By is { } by ? " by " + by : "")}: {changes}{(revision.Reason is { } r ? $" “{r}”" : "")}", revision.FromStep));
         }
         return [.. all.OrderByDescending(e => e.At ?? DateTimeOffset.MinValue).ThenByDescending(e => e.Seq).Take(most)];
+    }
+
+    /// <summary>When the step that this record closed ended; null for a step that is no longer kept.</summary>
+    private DateTimeOffset? TimeOf(long seq)
+    {
+        foreach (var (closed, at) in closings)
+            if (closed == seq) return at;
+        return null;
     }
 
     private static string Opening(OpenRecord open)
