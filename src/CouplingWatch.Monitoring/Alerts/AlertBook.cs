@@ -16,6 +16,7 @@ internal sealed class AlertBook(string run)
     public const int ClosedKept = 1000;
 
     private readonly List<AlertEntry> entries = [];
+    private readonly List<AlertEntry> standing = [];
     private readonly HashSet<string> spoken = [];
     private IReadOnlyList<Alert>? listed;
 
@@ -23,11 +24,19 @@ internal sealed class AlertBook(string run)
     public IReadOnlyList<Alert> All => listed ??= [.. entries.Where(e => !e.Held).Select(e => e.Alert).OrderBy(a => a.Seq).ThenBy(a => CheckIds.Rank(a.Check))];
 
     /// <summary>The entries whose condition stands, held ones included.</summary>
-    public IEnumerable<AlertEntry> Standing => entries.Where(e => e.Standing);
+    public IReadOnlyList<AlertEntry> Standing => standing;
+
+    /// <summary>How many alerts are shelved.</summary>
+    public int ShelvedCount { get; private set; }
 
     public IReadOnlyList<AlertEntry> Entries => entries;
 
-    public AlertEntry? Open(string check) => entries.Find(e => e.Standing && e.Alert.Check == check);
+    public AlertEntry? Open(string check)
+    {
+        foreach (var entry in standing)
+            if (entry.Alert.Check == check) return entry;
+        return null;
+    }
 
     /// <summary>Id of an alert of this run: run, check and first seq.</summary>
     public string IdOf(string check, long seq) => FormattableString.Invariant($"{run}~{check}~{seq}");
@@ -47,7 +56,7 @@ internal sealed class AlertBook(string run)
         }
         if (CheckIds.OncePerSettings(finding.Check) && !spoken.Add(finding.Check)) return;
         foreach (var earlier in entries)
-            if (earlier.Alert.Check == finding.Check && earlier.Alert.State == AlertState.Returned) earlier.Alert = earlier.Alert with { State = AlertState.Closed };
+            if (earlier.Alert.State == AlertState.Returned && earlier.Alert.Check == finding.Check) earlier.Alert = earlier.Alert with { State = AlertState.Closed };
         var entry = new AlertEntry(new Alert
         {
             Id = IdOf(finding.Check, at.Seq),
@@ -66,6 +75,7 @@ internal sealed class AlertBook(string run)
         { Held = held && !finding.Certain, Certain = finding.Certain, FirstOrdinal = at.Ordinal };
         entry.Touch(at.Ordinal);
         entries.Add(entry);
+        standing.Add(entry);
         Trim();
         if (!entry.Held) changes.Add(new Change(ChangeKind.Alert, entry.Alert.Id));
     }
@@ -74,12 +84,12 @@ internal sealed class AlertBook(string run)
     public void Relate(long ordinal)
     {
         AlertEntry? cause = null;
-        foreach (var entry in entries)
-            if (entry.Standing && entry.LastOrdinal == ordinal && CheckIds.Explains(entry.Alert.Check)
+        foreach (var entry in standing)
+            if (entry.LastOrdinal == ordinal && CheckIds.Explains(entry.Alert.Check)
                 && (cause is null || CheckIds.Rank(entry.Alert.Check) < CheckIds.Rank(cause.Alert.Check))) cause = entry;
-        foreach (var entry in entries)
+        foreach (var entry in standing)
         {
-            if (!entry.Standing || entry.LastOrdinal != ordinal) continue;
+            if (entry.LastOrdinal != ordinal) continue;
             var id = cause is null || cause == entry || !CheckIds.MayBeExplained(entry.Alert.Check) ? null : cause.Alert.Id;
             if (entry.Alert.Cause == id) continue;
             entry.Alert = entry.Alert with { Cause = id };
@@ -90,16 +100,16 @@ internal sealed class AlertBook(string run)
     /// <summary>The verdict on an attempt: a rejected one takes the alerts raised inside it along; those already shown are closed.</summary>
     public void Settle(bool rejected, long ordinal, long seq, List<Change> changes)
     {
-        if (entries.Count == 0) return;
-        for (var i = entries.Count - 1; i >= 0; i--)
+        for (var i = standing.Count - 1; i >= 0; i--)
         {
-            var entry = entries[i];
-            if (rejected && !entry.Held && !entry.Certain && entry.FirstOrdinal == ordinal && entry.Standing) Close(entry, seq, changes);
+            var entry = standing[i];
+            if (rejected && !entry.Held && !entry.Certain && entry.FirstOrdinal == ordinal) Close(entry, seq, changes);
             if (!entry.Held) continue;
             listed = null;
             if (rejected)
             {
-                entries.RemoveAt(i);
+                standing.RemoveAt(i);
+                entries.Remove(entry);
                 spoken.Remove(entry.Alert.Check);
                 continue;
             }
@@ -111,9 +121,10 @@ internal sealed class AlertBook(string run)
     /// <summary>A step converged: alerts whose condition did not hold in it come one step nearer to closing.</summary>
     public void StepConverged(long ordinal, long seq, List<Change> changes)
     {
-        foreach (var entry in entries)
+        for (var i = standing.Count - 1; i >= 0; i--)
         {
-            if (!entry.Standing || entry.LastOrdinal == ordinal) continue;
+            var entry = standing[i];
+            if (entry.LastOrdinal == ordinal) continue;
             if (++entry.CleanSteps >= CleanSteps) Close(entry, seq, changes);
         }
     }
@@ -121,9 +132,10 @@ internal sealed class AlertBook(string run)
     /// <summary>An iteration of a steady run went by; <paramref name="reported"/> tells which checks spoke at it.</summary>
     public void SteadyIteration(List<Finding> reported, long seq, List<Change> changes)
     {
-        foreach (var entry in entries)
+        for (var i = standing.Count - 1; i >= 0; i--)
         {
-            if (!entry.Standing || reported.Exists(f => f.Check == entry.Alert.Check)) continue;
+            var entry = standing[i];
+            if (reported.Exists(f => f.Check == entry.Alert.Check)) continue;
             if (++entry.CleanIterations >= CleanIterations) Close(entry, seq, changes);
         }
     }
@@ -138,6 +150,7 @@ internal sealed class AlertBook(string run)
         if (entry is null) return false;
         var changed = change(entry.Alert);
         if (ReferenceEquals(changed, entry.Alert)) return false;
+        ShelvedCount += (changed.State == AlertState.Shelved ? 1 : 0) - (entry.Alert.State == AlertState.Shelved ? 1 : 0);
         entry.Alert = changed;
         listed = null;
         return true;
@@ -161,6 +174,7 @@ internal sealed class AlertBook(string run)
         };
         entry.Alert = entry.Alert with { State = state, ClosedSeq = seq };
         listed = null;
+        standing.Remove(entry);
         changes.Add(new Change(ChangeKind.Alert, entry.Alert.Id));
     }
 
@@ -168,7 +182,9 @@ internal sealed class AlertBook(string run)
     {
         if (entries.Count <= ClosedKept) return;
         var oldest = entries.FindIndex(e => !e.Standing);
-        if (oldest >= 0) entries.RemoveAt(oldest);
+        if (oldest < 0) return;
+        if (entries[oldest].Alert.State == AlertState.Shelved) ShelvedCount--;
+        entries.RemoveAt(oldest);
     }
 }
 

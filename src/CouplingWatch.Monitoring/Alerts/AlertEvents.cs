@@ -22,6 +22,7 @@ internal static class AlertEvents
     /// <summary>Ends the shelvings whose time is up.</summary>
     public static void EndShelving(AlertBook book, DateTimeOffset now, List<Change> changes)
     {
+        if (book.ShelvedCount == 0) return;
         for (var i = 0; i < book.Entries.Count; i++)
         {
             var alert = book.Entries[i].Alert;

@@ -62,7 +62,15 @@ internal sealed class RaceBook(string run)
     public void Pass(IterationRecord record, bool first)
     {
         if (first) seconds = 0;
-        seconds += record.PassSeconds ?? record.Seconds?.Values.ToArray().Sum();
+        seconds += record.PassSeconds ?? Sum(record.Seconds);
+    }
+
+    private static double? Sum(NamedValues? values)
+    {
+        if (values is null) return null;
+        var sum = 0.0;
+        foreach (var value in values.Values) sum += value;
+        return sum;
     }
 
     /// <summary>A step or an attempt has its verdict.</summary>
