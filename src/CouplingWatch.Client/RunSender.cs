@@ -1,4 +1,3 @@
-using System.Buffers;
 using System.Security.Cryptography;
 using CouplingWatch.Client.Buffering;
 using CouplingWatch.Client.Delivery;
@@ -14,8 +13,6 @@ namespace CouplingWatch.Client;
 /// </summary>
 public sealed class RunSender : IAsyncDisposable
 {
-    private static readonly SearchValues<char> NameCharacters = SearchValues.Create("abcdefghijklmnopqrstuvwxyz0123456789-_.");
-
     private readonly RunSenderOptions options;
     private readonly Outbox outbox;
     private readonly IDelivery delivery;
@@ -48,7 +45,7 @@ public sealed class RunSender : IAsyncDisposable
     public static RunSender Start(Uri? server, string run, OpenRecord open, RunSenderOptions? options = null)
     {
         ArgumentNullException.ThrowIfNull(open);
-        CheckName(run);
+        RunName.Check(run);
         if (server is { IsAbsoluteUri: false }) throw new ArgumentException($"The server's address must be absolute, such as http://127.0.0.1:5000, not {server}.", nameof(server));
         options ??= new RunSenderOptions();
         options.Check();
@@ -134,12 +131,5 @@ public sealed class RunSender : IAsyncDisposable
         using var file = new FileStream(path, FileMode.Create, FileAccess.Write);
         foreach (var entry in outbox.Peek(int.MaxValue, long.MaxValue)) file.Write(entry.Line);
         options.Log?.Invoke($"{outbox.Count} records were not delivered; they are kept in {path}");
-    }
-
-    private static void CheckName(string run)
-    {
-        ArgumentException.ThrowIfNullOrEmpty(run);
-        if (run.Length > 64 || !char.IsAsciiLetterOrDigit(run[0]) || run.AsSpan().ContainsAnyExcept(NameCharacters))
-            throw new ArgumentException($"A run's name is 1–64 of a-z0-9-_. and begins with a letter or digit; it was \"{run}\".", nameof(run));
     }
 }

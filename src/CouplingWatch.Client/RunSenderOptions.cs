@@ -7,7 +7,7 @@ public sealed record RunSenderOptions
     public const long DefaultBufferBytes = 64L * 1024 * 1024;
     public const int DefaultBatchBytes = 4 * 1024 * 1024;
     public const int DefaultBatchRecords = 1000;
-    public static readonly TimeSpan LongestTimeout = TimeSpan.FromDays(30);
+    public static readonly TimeSpan LongestTimeout = TimeSpan.FromDays(24);
 
     /// <summary>Least time between two posts, so that records gather; 0 to 100 ms.</summary>
     public TimeSpan Linger { get; init; } = DefaultLinger;
@@ -48,9 +48,9 @@ public sealed record RunSenderOptions
         if (BufferBytes < 1024) throw new ArgumentOutOfRangeException(nameof(BufferBytes), BufferBytes, "BufferBytes must be at least 1,024.");
         if (BatchBytes < 1024) throw new ArgumentOutOfRangeException(nameof(BatchBytes), BatchBytes, "BatchBytes must be at least 1,024.");
         if (BatchRecords < 1) throw new ArgumentOutOfRangeException(nameof(BatchRecords), BatchRecords, "BatchRecords must be at least 1.");
-        if (AnswerTimeout <= TimeSpan.Zero || AnswerTimeout > LongestTimeout) throw new ArgumentOutOfRangeException(nameof(AnswerTimeout), AnswerTimeout, "AnswerTimeout must lie above 0 and within 30 days.");
-        if (CloseTimeout <= TimeSpan.Zero || CloseTimeout > LongestTimeout) throw new ArgumentOutOfRangeException(nameof(CloseTimeout), CloseTimeout, "CloseTimeout must lie above 0 and within 30 days.");
-        if (LongestBackOff > LongestTimeout) throw new ArgumentOutOfRangeException(nameof(LongestBackOff), LongestBackOff, "LongestBackOff must lie within 30 days.");
+        if (AnswerTimeout <= TimeSpan.Zero || AnswerTimeout > LongestTimeout) throw new ArgumentOutOfRangeException(nameof(AnswerTimeout), AnswerTimeout, "AnswerTimeout must lie above 0 and within 24 days.");
+        if (CloseTimeout <= TimeSpan.Zero || CloseTimeout > LongestTimeout) throw new ArgumentOutOfRangeException(nameof(CloseTimeout), CloseTimeout, "CloseTimeout must lie above 0 and within 24 days.");
+        if (LongestBackOff > LongestTimeout) throw new ArgumentOutOfRangeException(nameof(LongestBackOff), LongestBackOff, "LongestBackOff must lie within 24 days.");
         if (FirstBackOff <= TimeSpan.Zero || LongestBackOff < FirstBackOff) throw new ArgumentOutOfRangeException(nameof(FirstBackOff), FirstBackOff, "FirstBackOff must be above 0 and not above LongestBackOff.");
     }
 }

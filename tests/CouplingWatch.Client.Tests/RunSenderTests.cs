@@ -1,6 +1,7 @@
 using System.Net;
 using CouplingWatch.Client;
 using CouplingWatch.Records;
+using CouplingWatch.Testing.Servers;
 using CouplingWatch.Wire;
 using Microsoft.Extensions.Time.Testing;
 

@@ -6,14 +6,17 @@ using CouplingWatch.Recordings;
 
 namespace CouplingWatch.Cli.Check;
 
-/// <summary><c>check FILE</c>: says before a run starts whether it will be understood, from the first records it would send.</summary>
+/// <summary><c>check FILE|URL</c>: says before a run starts whether it will be understood, from the first records it would send.</summary>
 internal static class CheckCommand
 {
     public static Command Create()
     {
-        var file = new Argument<FileInfo>("FILE") { Description = "The first records of a run: open, and the iterations of a step or more." };
-        var command = new Command("check", "Says whether a stream will be understood: the level reached, which checks are off, and what to send for them.") { file };
-        command.SetAction((parsed, cancel) => RunAsync(parsed.GetValue(file)!, Console.Out, Console.Error, cancel));
+        var what = new Argument<string>("FILE|URL") { Description = "The first records of a run (open, and the iterations of a step or more), or the address of a server." };
+        var run = new Option<string?>("--run") { Description = "With an address: the name whose freedom is looked up." };
+        var command = new Command("check", "Says whether a stream will be understood (the level reached, which checks are off, what to send for them), or whether a server will take it.") { what, run };
+        command.SetAction((parsed, cancel) => Uri.TryCreate(parsed.GetValue(what), UriKind.Absolute, out var server) && server.Scheme is "http" or "https"
+            ? ServerCheck.RunAsync(server, parsed.GetValue(run), null, Console.Out, cancel)
+            : RunAsync(new FileInfo(parsed.GetValue(what)!), Console.Out, Console.Error, cancel));
         return command;
     }
 

@@ -15,12 +15,12 @@ internal sealed class HttpDelivery : IDelivery
     private readonly TimeSpan timeout;
     private readonly TimeProvider time;
 
-    public HttpDelivery(Uri server, string run, string instance, RunSenderOptions options)
+    public HttpDelivery(Uri server, string run, string? instance, RunSenderOptions options)
     {
         http = options.Handler is { } handler ? new HttpClient(handler, disposeHandler: false) : new HttpClient(new SocketsHttpHandler { PooledConnectionLifetime = TimeSpan.FromMinutes(5) });
         http.Timeout = Timeout.InfiniteTimeSpan;
         var root = new Uri(server.AbsoluteUri.TrimEnd('/') + "/");
-        records = new Uri(root, $"api/runs/{run}/records?instance={Uri.EscapeDataString(instance)}");
+        records = new Uri(root, instance is null ? $"api/runs/{run}/records" : $"api/runs/{run}/records?instance={Uri.EscapeDataString(instance)}");
         settings = new Uri(root, $"api/runs/{run}/settings");
         timeout = options.AnswerTimeout;
         time = options.Time;

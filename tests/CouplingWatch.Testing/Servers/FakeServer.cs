@@ -6,10 +6,10 @@ using CouplingWatch.Ndjson;
 using CouplingWatch.Records;
 using CouplingWatch.Wire;
 
-namespace CouplingWatch.Client.Tests;
+namespace CouplingWatch.Testing.Servers;
 
 /// <summary>Answers posts as the interface says, in process: keeps records in order, refuses gaps and what it is told to refuse, fails when told to.</summary>
-internal sealed class FakeServer : HttpMessageHandler
+public sealed class FakeServer : HttpMessageHandler
 {
     private readonly Lock gate = new();
     private readonly List<StreamRecord> kept = [];
@@ -31,6 +31,9 @@ internal sealed class FakeServer : HttpMessageHandler
     /// <summary>Most bytes of a post.</summary>
     public long MostBytes { get; set; } = long.MaxValue;
 
+    /// <summary>Done once, before the next post is taken.</summary>
+    public Action? Before { get; set; }
+
     public List<string> Queries { get; } = [];
 
     public IReadOnlyList<StreamRecord> Kept
@@ -51,6 +54,12 @@ internal sealed class FakeServer : HttpMessageHandler
         return response;
     });
 
+    /// <summary>Keeps a record as if it had been posted.</summary>
+    public void Add(StreamRecord record)
+    {
+        lock (gate) kept.Add(record);
+    }
+
     /// <summary>Loses what it kept, from a seq on.</summary>
     public void Forget(int from)
     {
@@ -59,16 +68,28 @@ internal sealed class FakeServer : HttpMessageHandler
 
     protected override async Task<HttpResponseMessage> SendAsync(HttpRequestMessage request, CancellationToken cancellationToken)
     {
-        if (request.Method == HttpMethod.Get) return Answer(HttpStatusCode.OK, JsonSerializer.Serialize(Settings, WireJson.Options));
+        if (request.Method == HttpMethod.Get) return Get(request.RequestUri!.AbsolutePath);
         var body = await request.Content!.ReadAsByteArrayAsync(cancellationToken);
         lock (gate)
         {
             Posts++;
+            (var before, Before) = (Before, null);
+            before?.Invoke();
             Queries.Add(request.RequestUri!.PathAndQuery);
             if (Down) throw new HttpRequestException("connection refused");
             if (faults.TryDequeue(out var fault)) return fault();
             return body.Length > MostBytes ? Problem(HttpStatusCode.RequestEntityTooLarge, "too-large", $"\"next\":{kept.Count},") : Take(body);
         }
+    }
+
+    private HttpResponseMessage Get(string path)
+    {
+        if (Down) throw new HttpRequestException("connection refused");
+        if (path == "/readyz") return Answer(HttpStatusCode.OK, "{}");
+        if (path.EndsWith("/settings", StringComparison.Ordinal)) return Answer(HttpStatusCode.OK, JsonSerializer.Serialize(Settings, WireJson.Options));
+        if (Kept.Count == 0) return Problem(HttpStatusCode.NotFound, "unknown-run", "");
+        var summary = new RunSummary { Run = path[(path.LastIndexOf('/') + 1)..], State = "live", Verdict = new Verdict("learning", "Learning", ""), NextSeq = Kept.Count };
+        return Answer(HttpStatusCode.OK, JsonSerializer.Serialize(new RunDetail { Summary = summary, RestsOn = "", Settings = new CouplingSettings() }, WireJson.Options));
     }
 
     private HttpResponseMessage Take(byte[] body)
