@@ -16,7 +16,7 @@ public sealed partial class SecantLedger : IDisposable
     private const int RowHeight = 13;
     private CancellationTokenSource? asking;
     private IReadOnlyList<LedgerRow> rows = [];
-    private BasisView? answer;
+    private BasisView? answer, askedFor;
     private FilterRule rule;
     private double threshold;
     private string slider = "";
@@ -75,7 +75,7 @@ public sealed partial class SecantLedger : IDisposable
     {
         if (!tries) Follow();
         Lay();
-        if (tries) await AskAsync();
+        if (tries && !ReferenceEquals(askedFor, Basis)) await AskAsync();
     }
 
     public void Dispose()
@@ -156,6 +156,7 @@ public sealed partial class SecantLedger : IDisposable
         asking?.Dispose();
         asking = new CancellationTokenSource();
         var mine = asking.Token;
+        askedFor = Basis;
         try
         {
             var came = await Ask(rule, threshold, mine);

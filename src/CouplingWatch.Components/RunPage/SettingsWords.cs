@@ -15,6 +15,7 @@ public static class SettingsWords
         var parts = new List<string>();
         if (SettingKind.Named("method")!.Get(settings) is { } method) parts.Add(method);
         if (settings.HistorySteps is { } q) parts.Add($"history {Numbers.Count(q, "step")}");
+        if (settings is { FilterRule: null, FilterThreshold: { } alone }) parts.Add($"threshold {SettingKind.Exact(alone, power: true)}");
         if (settings.FilterRule is { } rule) parts.Add($"{LedgerRows.Named(rule)}{(settings.FilterThreshold is { } e ? $" {SettingKind.Exact(e, power: true)}" : "")}");
         if (settings.Relaxation is { } w) parts.Add($"relaxation {SettingKind.Exact(w)}");
         if (settings.PredictorOrder is { } p) parts.Add(p switch { 0 => "predictor constant", 1 => "predictor linear", 2 => "predictor quadratic", _ => $"predictor order {p}" });

@@ -67,12 +67,43 @@ public sealed class SettingsDraft(CouplingSettings inForce, AdjustableSettings a
         return Adjustable.Choices.TryGetValue(kind.Name, out var choices) && !choices.Contains(kind.Get(made)!) ? "not among what the run declared" : null;
     }
 
+    /// <summary>Changes that the run did not declare adjustable: they can be rehearsed, and need a restart.</summary>
+    public IReadOnlyList<SettingKind> NeedRestart => [.. Touched.Where(k => !Adjustable.Allows(k.Name) && k.Make(Text(k)) is not null)];
+
+    /// <summary>What changes, as settings; null where a value is not understood or lies outside what was declared.</summary>
+    public CouplingSettings? Change => Touched.Any(k => Wrong(k) is not null) ? null : Merged;
+
+    /// <summary>The same changes made from another revision.</summary>
+    public SettingsDraft From(CouplingSettings settings, int revision)
+    {
+        var fresh = new SettingsDraft(settings, Adjustable, revision) { Reason = Reason, FallBack = FallBack };
+        foreach (var kind in Touched) fresh.Type(kind, Text(kind));
+        foreach (var command in commands) fresh.Command(command, true);
+        return fresh;
+    }
+
+    /// <summary>Takes values over, each only where it is stated.</summary>
+    public void Take(CouplingSettings change)
+    {
+        foreach (var kind in SettingKind.All)
+            if (kind.Get(change) is { } text) Type(kind, text);
+    }
+
+    /// <summary>Back to what is in force.</summary>
+    public void Clear()
+    {
+        typed.Clear();
+        commands.Clear();
+        (Confirmed, FallBack) = (false, false);
+    }
+
     /// <summary>What still stands against publishing, as a sentence; null when nothing does.</summary>
     public string? Hindrance
     {
         get
         {
             if (Touched.FirstOrDefault(k => Wrong(k) is not null) is { } bad) return $"The {bad.Words} is {Wrong(bad)}.";
+            if (NeedRestart.FirstOrDefault() is { } fixedOne) return $"The {fixedOne.Words} was not declared adjustable: changing it needs a restart.";
             if (Changes.Count == 0 && commands.Count == 0) return "Nothing is changed yet.";
             if (string.IsNullOrWhiteSpace(Reason)) return "A reason is needed; it goes into the record.";
             return AltersResult && !Confirmed ? "This alters the converged result: confirm it a second time." : null;
@@ -82,7 +113,7 @@ public sealed class SettingsDraft(CouplingSettings inForce, AdjustableSettings a
     /// <summary>The body to publish: only what changes.</summary>
     public SettingsProposal Proposal() => new()
     {
-        Settings = Touched.Select(k => k.Make(Text(k))).OfType<CouplingSettings>().Aggregate(new CouplingSettings(), (all, one) => all.With(one)),
+        Settings = Merged,
         Commands = GivenCommands,
         Reason = Reason.Trim(),
         Confirm = AltersResult ? true : null,
@@ -104,6 +135,8 @@ public sealed class SettingsDraft(CouplingSettings inForce, AdjustableSettings a
     }
 
     public static string Range(NumberRange range) => $"{SettingKind.Exact(range.Low)} to {SettingKind.Exact(range.High)}";
+
+    private CouplingSettings Merged => Touched.Select(k => k.Make(Text(k))).OfType<CouplingSettings>().Aggregate(new CouplingSettings(), (all, one) => all.With(one));
 
     private IEnumerable<SettingKind> Touched => SettingKind.All.Where(k => typed.ContainsKey(k.Name));
 }

@@ -9,7 +9,6 @@ namespace CouplingWatch.Components.SettingsForm;
 public sealed partial class SettingsEditor
 {
     private SettingsDraft draft = default!;
-    private IReadOnlyList<SettingChange> changes = [];
     private string? problem;
     private bool busy;
     private object? started;
@@ -45,13 +44,6 @@ public sealed partial class SettingsEditor
             Start?.Invoke(draft);
             problem = null;
         }
-        changes = draft.Changes;
-    }
-
-    protected override bool ShouldRender()
-    {
-        changes = draft.Changes;
-        return true;
     }
 
     protected override async Task OnAfterRenderAsync(bool firstRender)
@@ -87,21 +79,12 @@ public sealed partial class SettingsEditor
 
     private void Rebase()
     {
-        var old = draft;
-        draft = new SettingsDraft(InForce, Adjustable, Latest) { Reason = old.Reason, FallBack = old.FallBack };
-        foreach (var change in old.Changes)
-        {
-            var kind = SettingKind.Named(change.Setting)!;
-            draft.Type(kind, old.Text(kind));
-        }
-        foreach (var command in old.GivenCommands) draft.Command(command, true);
+        draft = draft.From(InForce, Latest);
         problem = null;
     }
 
     private string May(SettingKind kind) =>
         draft.Adjustable.Ranges.TryGetValue(kind.Name, out var range) ? SettingsDraft.Range(range) : "as declared by the run";
-
-    private static string Words(SettingChange change) => SettingKind.Named(change.Setting)?.Words ?? change.Setting;
 
     private static string Id(SettingKind kind) => "set-" + kind.Name;
 
