@@ -13,6 +13,7 @@ function lost() {
   if (since === null) since = new Date();
   root.classList.add('lost');
   write('lost-words', `Not connected since ${clock(since)}.`);
+  if (part('lost-count')?.textContent === '') write('lost-count', 'This is what was known then.');
 }
 
 function found() {
