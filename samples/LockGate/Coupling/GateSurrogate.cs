@@ -42,7 +42,7 @@ internal sealed class GateSurrogate : ISurrogate
         faceAcceleration = new double[up];
         facePressure = new double[up];
         load = new double[leaf.Unknowns];
-        solver = new LinearPassSurrogate(leaf.Unknowns, Pass);
+        solver = new LinearPassSurrogate(leaf.Unknowns, Pass, tolerance: 3e-2);
     }
 
     /// <summary>Wall seconds of the latest answer.</summary>
