@@ -10,8 +10,8 @@ namespace CouplingWatch.Monitoring.Basis;
 /// <summary>Answers what the page asks of the basis: which columns, what each brings, what another rule or threshold would leave out. Changes nothing.</summary>
 internal static class BasisQuery
 {
-    /// <summary>Thresholds shown beside the one in force.</summary>
-    private static readonly double[] Thresholds = [1e-8, 1e-7, 1e-6, 1e-5, 1e-4, 1e-3, 1e-2, 1e-1];
+    /// <summary>Thresholds of either rule shown beside the one in force and the one the declared noise suggests.</summary>
+    private static readonly double[] Thresholds = [1e-8, 1e-6, 1e-4, 1e-2];
 
     /// <param name="step">The step in progress or the latest when null.</param>
     /// <param name="iteration">The latest of that step when null.</param>
@@ -63,7 +63,7 @@ internal static class BasisQuery
             Uncovered = numbers.Uncovered,
             AdvisedThreshold = AdvisedThreshold.Of(run, asked),
             DeclaredNoise = run.DeclaredNoise,
-            WhatIf = WhatIfs(run, store, order, at, asked, epsilon),
+            WhatIf = WhatIfs(run, store, order, at),
         };
     }
 
@@ -114,24 +114,25 @@ internal static class BasisQuery
         return null;
     }
 
-    private static IReadOnlyList<WhatIf> WhatIfs(RunState run, ColumnStore store, int[] order, StoredIteration at, FilterRule asked, double epsilon)
+    private static IReadOnlyList<WhatIf> WhatIfs(RunState run, ColumnStore store, int[] order, StoredIteration at)
     {
         List<WhatIf> list = [];
         int[] kept = [];
         Numbers numbers = default;
-        var known = false;
+        var inForce = (Rule: run.Settings.FilterRule, Threshold: UpdateJudge.ThresholdOf(run));
         foreach (var rule in (ReadOnlySpan<FilterRule>)[FilterRule.OwnNorm, FilterRule.PivotRatio])
         {
-            foreach (var threshold in Thresholds)
+            SortedSet<double> thresholds = [.. Thresholds, AdvisedThreshold.Of(run, rule)];
+            if (rule == inForce.Rule) thresholds.Add(inForce.Threshold);
+            foreach (var threshold in thresholds)
             {
                 var outcome = ColumnFilter.Apply(store.Secants, order, GroupBasis.RuleOf(rule)!.Value, threshold);
-                if (!known || !outcome.Kept.SequenceEqual(kept))
+                if (list.Count == 0 || !outcome.Kept.SequenceEqual(kept))
                 {
-                    known = true;
                     kept = outcome.Kept.ToArray();
-                    numbers = Numbers.Of(store.Secants, outcome, at);
+                    numbers = Numbers.Of(store.Secants, outcome, at, unitOnly: true);
                 }
-                list.Add(new WhatIf(rule, threshold, rule == run.Settings.FilterRule && threshold == run.Settings.FilterThreshold, outcome.Kept.Length, numbers.Unit, numbers.Uncovered));
+                list.Add(new WhatIf(rule, threshold, (rule, threshold) == inForce, outcome.Kept.Length, numbers.Unit, numbers.Uncovered));
             }
         }
         return list;
@@ -140,7 +141,7 @@ internal static class BasisQuery
     /// <summary>Condition and uncovered share of a filtered basis; null where there is no number.</summary>
     private readonly record struct Numbers(double? Raw, double? Unit, double? Uncovered)
     {
-        public static Numbers Of(SecantBasis secants, FilterOutcome outcome, StoredIteration at)
+        public static Numbers Of(SecantBasis secants, FilterOutcome outcome, StoredIteration at, bool unitOnly = false)
         {
             double? uncovered = null;
             if (at.Finite)
@@ -150,6 +151,7 @@ internal static class BasisQuery
                 uncovered = SecantFit.Solve(outcome, onDirections, outside).UncoveredShare;
             }
             if (outcome.Kept.Length == 0) return new Numbers(null, null, uncovered);
+            if (unitOnly) return new Numbers(null, Shown(ConditionNumber.OfUnitColumns(outcome.Triangle())), uncovered);
             var condition = ConditionNumber.Of(outcome.Triangle());
             return new Numbers(Shown(condition.Raw), Shown(condition.UnitColumns), uncovered);
         }

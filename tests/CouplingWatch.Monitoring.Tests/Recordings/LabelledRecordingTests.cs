@@ -63,7 +63,7 @@ public sealed class LabelledRecordingTests
         Assert.Equal((long)recording.Label["iterations"]!, monitor.IterationCount);
     }
 
-    private static bool Matches(Advice advice, JsonNode wanted) =>
+    internal static bool Matches(Advice advice, JsonNode wanted) =>
         advice.Setting == (string?)wanted["setting"]
         && (wanted["move"] is not { } move || advice.Move == (string?)move)
         && (wanted["to"] is not { } to || advice.To == (string?)to)
