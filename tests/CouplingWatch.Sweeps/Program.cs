@@ -31,7 +31,7 @@ int Races()
     var jobs = from variant in Chosen() from start in Starts.All select (variant, start);
     var threads = int.Parse(Option("--threads") ?? "1", CultureInfo.InvariantCulture);
     var trials = jobs.AsParallel().AsOrdered().WithDegreeOfParallelism(threads)
-        .Select(job => RaceTrial.Run(job.variant, job.start, options, seed)).AsEnumerable()
+        .Select(job => RaceTrial.Run(job.variant, job.start, options, seed)).AsEnumerable().OfType<RaceTrial>()
         .Select(trial =>
         {
             if (args.Contains("--each")) Console.WriteLine(RaceTable.Line(trial));
@@ -49,7 +49,7 @@ int Rules()
     foreach (var (name, options) in RuleSets.All.Where(r => Option("--set") is not { } only || only.Split('|').Any(o => r.Name.Contains(o, StringComparison.Ordinal))))
     {
         var jobs = from variant in Chosen() from start in Starts.All from seed in Enumerable.Range(1, seeds) select (variant, start, seed);
-        var trials = jobs.AsParallel().AsOrdered().WithDegreeOfParallelism(threads).Select(job => RaceTrial.Run(job.variant, job.start, options, job.seed, whole)).ToList();
+        var trials = jobs.AsParallel().AsOrdered().WithDegreeOfParallelism(threads).Select(job => RaceTrial.Run(job.variant, job.start, options, job.seed, whole)).OfType<RaceTrial>().ToList();
         Console.WriteLine(RaceTable.Summary(name, trials));
         if (args.Contains("--each")) foreach (var trial in trials) Console.WriteLine(RaceTable.Line(trial));
     }

@@ -45,7 +45,8 @@ internal sealed record RaceTrial
 
     /// <summary>Runs the race, and once more for every arm: the same steps up to the verdict, then that arm.</summary>
     /// <param name="whole">When given, the arms are instead read off runs that kept the arm's settings throughout: much faster, nearly the same.</param>
-    public static RaceTrial Run(Variant variant, Start start, RaceOptions options, long seed, WholeRuns? whole = null)
+    /// <returns>Null when the run fails before the twelve steps are complete, so that there is nothing to race.</returns>
+    public static RaceTrial? Run(Variant variant, Start start, RaceOptions options, long seed, WholeRuns? whole = null)
     {
         double? noise = variant.Make().Solvers.Max(s => s.Noise);
         var chosen = ChallengerList.Propose(start.Settings, Starts.Adjustable, noise, most: options.Challengers).Challengers;
@@ -53,7 +54,8 @@ internal sealed record RaceTrial
         {
             Id = "race-1", Run = variant.Name, InUse = start.Settings, Seed = seed, Cap = start.Settings.IterationCap, MayDropHistory = true, Challengers = chosen, Before = before,
         }, options), options.StepsBefore, StepsAfter);
-        var view = raced.Race!.View();
+        if (raced.Race is null) return null;
+        var view = raced.Race.View();
         var decided = raced.DecidedAt ?? raced.Steps.Count;
         var end = decided + StepsAfter;
         var arms = new double[chosen.Count + 1];
