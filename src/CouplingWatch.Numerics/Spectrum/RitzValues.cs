@@ -25,6 +25,9 @@ public sealed class RitzValues
     /// <summary>Largest imaginary part, as a share of the largest modulus, for which a relaxation is still named.</summary>
     public const double ImaginaryShareAllowed = 0.1;
 
+    /// <summary>As for the decompositions: one thread.</summary>
+    static RitzValues() => MathNet.Numerics.Control.UseSingleThread();
+
     private RitzValues(Complex[] values)
     {
         Values = values;
