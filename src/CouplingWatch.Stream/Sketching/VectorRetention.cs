@@ -65,7 +65,11 @@ public static class VectorRetention
         if (part.ContainsKey("sketch")) return;
         part["sketch"] = new JsonObject
         {
-            ["rows"] = sketch.Rows, ["seed"] = sketch.Seed, ["fullRows"] = sketch.FullRows, ["residual"] = Base64(sketch.Residual), ["output"] = Base64(sketch.Output),
+            ["rows"] = sketch.Rows,
+            ["seed"] = sketch.Seed,
+            ["fullRows"] = sketch.FullRows,
+            ["residual"] = Base64(sketch.Residual),
+            ["output"] = Base64(sketch.Output),
         };
     }
 

@@ -54,9 +54,26 @@ internal static class IterationParser
         }
         return new IterationRecord
         {
-            Seq = seq!.Value, At = at, Step = step.Value, Iteration = iteration.Value, Attempt = attempt, Time = time, TimeStep = timeStep,
-            Residuals = residuals, Magnitudes = magnitudes, Targets = targets, Met = met, Seconds = seconds, PassSeconds = passSeconds,
-            Relaxation = relaxation, Worst = worst, Vectors = data.Vectors, Sketch = data.Sketch, Basis = data.Basis, Surrogate = surrogate, Groups = groups,
+            Seq = seq!.Value,
+            At = at,
+            Step = step.Value,
+            Iteration = iteration.Value,
+            Attempt = attempt,
+            Time = time,
+            TimeStep = timeStep,
+            Residuals = residuals,
+            Magnitudes = magnitudes,
+            Targets = targets,
+            Met = met,
+            Seconds = seconds,
+            PassSeconds = passSeconds,
+            Relaxation = relaxation,
+            Worst = worst,
+            Vectors = data.Vectors,
+            Sketch = data.Sketch,
+            Basis = data.Basis,
+            Surrogate = surrogate,
+            Groups = groups,
         };
     }
 

@@ -53,10 +53,26 @@ internal static class OpenParser
         if (fields is null) return RecordParts.Missing(ref c, "fields", "the fields exchanged at the interface, each with its name");
         return new OpenRecord
         {
-            Seq = seq!.Value, At = at, Format = format.Value, Instance = instance, Campaign = campaign, Title = title,
-            Scheme = scheme ?? CouplingScheme.Serial, Stepping = stepping ?? Stepping.Transient, Solvers = solvers, Fields = fields,
-            Settings = settings ?? new CouplingSettings(), Adjustable = adjustable, TimeStep = timeStep, EndTime = endTime,
-            AllocationEndsAt = allocation, Nodes = nodes, BeatSeconds = beat, Continues = continues, Provenance = provenance, Labels = labels,
+            Seq = seq!.Value,
+            At = at,
+            Format = format.Value,
+            Instance = instance,
+            Campaign = campaign,
+            Title = title,
+            Scheme = scheme ?? CouplingScheme.Serial,
+            Stepping = stepping ?? Stepping.Transient,
+            Solvers = solvers,
+            Fields = fields,
+            Settings = settings ?? new CouplingSettings(),
+            Adjustable = adjustable,
+            TimeStep = timeStep,
+            EndTime = endTime,
+            AllocationEndsAt = allocation,
+            Nodes = nodes,
+            BeatSeconds = beat,
+            Continues = continues,
+            Provenance = provenance,
+            Labels = labels,
         };
     }
 
@@ -145,8 +161,17 @@ internal static class OpenParser
         if (name is null) return c.FailMissing("name", "the name of the field");
         field = new FieldDeclaration
         {
-            Name = name, Unit = unit, Size = size, Role = role ?? FieldRole.Unknown, From = from, Group = group, Weight = weight,
-            Norm = norm ?? FieldNorm.Euclidean, RelativeTo = reference ?? ToleranceReference.Output, Relative = relative, Absolute = absolute,
+            Name = name,
+            Unit = unit,
+            Size = size,
+            Role = role ?? FieldRole.Unknown,
+            From = from,
+            Group = group,
+            Weight = weight,
+            Norm = norm ?? FieldNorm.Euclidean,
+            RelativeTo = reference ?? ToleranceReference.Output,
+            Relative = relative,
+            Absolute = absolute,
         };
         return true;
     }

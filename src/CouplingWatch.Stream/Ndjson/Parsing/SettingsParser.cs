@@ -35,8 +35,16 @@ internal static class SettingsParser
         }
         settings = new CouplingSettings
         {
-            Method = method, Relaxation = relaxation, HistorySteps = history, FilterRule = rule, FilterThreshold = threshold,
-            IterationCap = cap, PredictorOrder = order, Tolerance = tolerance, Surrogate = surrogate, Own = own,
+            Method = method,
+            Relaxation = relaxation,
+            HistorySteps = history,
+            FilterRule = rule,
+            FilterThreshold = threshold,
+            IterationCap = cap,
+            PredictorOrder = order,
+            Tolerance = tolerance,
+            Surrogate = surrogate,
+            Own = own,
         };
         return c.Problem is null;
     }

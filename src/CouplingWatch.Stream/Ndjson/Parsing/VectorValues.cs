@@ -1,6 +1,6 @@
+using System.Buffers;
 using System.Buffers.Binary;
 using System.Buffers.Text;
-using System.Buffers;
 using System.Runtime.InteropServices;
 using System.Text;
 using System.Text.Json;
