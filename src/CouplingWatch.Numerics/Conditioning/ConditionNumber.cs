@@ -47,7 +47,7 @@ public readonly record struct ConditionNumber(double Raw, double UnitColumns)
             foreach (double entry in matrix.Column(j))
                 if (!double.IsFinite(entry)) return double.NaN;
         if (matrix.Rows < matrix.Columns) return double.PositiveInfinity;
-        double[] values = TruncatedSvd.Of(matrix, 0).SingularValues;
+        double[] values = TruncatedSvd.ValuesOf(matrix);
         return values[^1] > 0 ? values[0] / values[^1] : double.PositiveInfinity;
     }
 }

@@ -16,9 +16,9 @@ internal static class JacobiSvd
 
     /// <summary>
     /// Turns the columns of <paramref name="a"/> into U·Σ and <paramref name="v"/>, which starts as the identity, into V; both
-    /// by falling singular value. Returns the singular values.
+    /// by falling singular value. Returns the singular values; without V only they are wanted.
     /// </summary>
-    internal static double[] Run(SmallMatrix a, SmallMatrix v)
+    internal static double[] Run(SmallMatrix a, SmallMatrix? v)
     {
         int n = a.Columns;
         double largest = 0;
@@ -39,7 +39,7 @@ internal static class JacobiSvd
         return Sort(a, v, exponent);
     }
 
-    private static bool Sweep(SmallMatrix a, SmallMatrix v, double[] squares, double orthogonal)
+    private static bool Sweep(SmallMatrix a, SmallMatrix? v, double[] squares, double orthogonal)
     {
         bool turned = false;
         for (int p = 0; p < a.Columns - 1; p++)
@@ -53,31 +53,41 @@ internal static class JacobiSvd
                 double zeta = (squares[q] - squares[p]) / (2 * product);
                 double t = (zeta >= 0 ? 1 : -1) / (Math.Abs(zeta) + double.Hypot(1, zeta));
                 double c = 1 / double.Hypot(1, t), s = c * t;
-                Turn(a.Column(p), a.Column(q), c, s);
-                Turn(v.Column(p), v.Column(q), c, s);
-                squares[p] = LongVector.Dot(a.Column(p), a.Column(p));
-                squares[q] = LongVector.Dot(a.Column(q), a.Column(q));
+                LongVector.Rotate(a.Column(p), a.Column(q), c, -s);
+                if (v is not null) LongVector.Rotate(v.Column(p), v.Column(q), c, -s);
+                squares[p] = Turned(squares[p], -t * product, a.Column(p));
+                squares[q] = Turned(squares[q], t * product, a.Column(q));
             }
         }
         return turned;
     }
 
-    private static void Turn(Span<double> x, Span<double> y, double c, double s) => LongVector.Rotate(x, y, c, -s);
+    /// <summary>The square of a column after a rotation; formed afresh where the difference would cancel.</summary>
+    private static double Turned(double before, double change, ReadOnlySpan<double> column)
+    {
+        double after = before + change;
+        return after > 0.1 * before ? after : LongVector.Dot(column, column);
+    }
 
-    private static double[] Sort(SmallMatrix a, SmallMatrix v, int exponent)
+    private static double[] Sort(SmallMatrix a, SmallMatrix? v, int exponent)
     {
         int n = a.Columns;
         var values = new double[n];
         for (int j = 0; j < n; j++) values[j] = LongVector.Norm(a.Column(j));
         int[] order = [.. Enumerable.Range(0, n).OrderByDescending(j => values[j])];
+        if (v is not null) Reorder(a, v, order, exponent);
+        return [.. order.Select(j => Math.ScaleB(values[j], exponent))];
+    }
+
+    private static void Reorder(SmallMatrix a, SmallMatrix v, int[] order, int exponent)
+    {
         SmallMatrix oldA = a.Copy(), oldV = v.Copy();
-        for (int j = 0; j < n; j++)
+        for (int j = 0; j < order.Length; j++)
         {
             Span<double> target = a.Column(j);
             oldA.Column(order[j]).CopyTo(target);
             foreach (ref double entry in target) entry = Math.ScaleB(entry, exponent);
             oldV.Column(order[j]).CopyTo(v.Column(j));
         }
-        return [.. order.Select(j => Math.ScaleB(values[j], exponent))];
     }
 }

@@ -17,11 +17,11 @@ public sealed class SecantBasis
     private readonly List<double[]> coefficients;
     private readonly List<double> norms;
     private readonly List<int> ranks;
-    private readonly Stack<double[]> spare = new();
-    private double[][] directions;
-    private double[] scratch = [];
-    private double[] first;
-    private double[] second;
+    private readonly Stack<AlignedVector> spare = new();
+    private AlignedVector[] directions;
+    private AlignedVector scratch;
+    private readonly ReductionBuffers buffers = new();
+    private double[] projected;
 
     /// <summary>An empty basis.</summary>
     /// <param name="rowCount">Length N of every column, 1 or more.</param>
@@ -32,9 +32,8 @@ public sealed class SecantBasis
         ArgumentOutOfRangeException.ThrowIfLessThan(rowCount, 1);
         ArgumentOutOfRangeException.ThrowIfLessThan(capacity, 1);
         RowCount = rowCount;
-        directions = new double[capacity][];
-        first = new double[capacity + 1];
-        second = new double[capacity + 1];
+        directions = new AlignedVector[capacity];
+        projected = new double[capacity];
         coefficients = new List<double[]>(capacity);
         norms = new List<double>(capacity);
         ranks = new List<int>(capacity);
@@ -64,7 +63,7 @@ public sealed class SecantBasis
     public ReadOnlySpan<double> Direction(int index)
     {
         if ((uint)index >= (uint)Rank) throw new ArgumentOutOfRangeException(nameof(index), index, $"must be 0 to {Rank - 1}");
-        return directions[index].AsSpan(0, RowCount);
+        return directions[index].Span;
     }
 
     /// <summary>A copy of C: <see cref="Rank"/> rows, <see cref="ColumnCount"/> columns in arrival order.</summary>
@@ -87,29 +86,30 @@ public sealed class SecantBasis
     {
         if (column.Length != RowCount)
             throw new ArgumentException($"a column has {RowCount} entries here, this one has {column.Length}", nameof(column));
-        double norm = LongVector.Norm(column);
-        if (!double.IsFinite(norm)) return new AppendResult(AppendOutcome.NotFinite, double.NaN, 0);
-        if (norm == 0) return new AppendResult(AppendOutcome.Zero, 0, 0);
-
         MakeRoom();
-        double[] work = spare.TryPop(out double[]? used) ? used : new double[RowCount];
-        int exponent = CopyScaled(column, norm, work);
+        AlignedVector vector = spare.TryPop(out AlignedVector used) ? used : AlignedVector.Allocate(RowCount);
+        Span<double> work = vector.Span;
+        double norm = CopyScaled(column, work, out int exponent);
+        if (norm == 0 || !double.IsFinite(norm))
+        {
+            spare.Push(vector);
+            return norm == 0 ? new AppendResult(AppendOutcome.Zero, 0, 0) : new AppendResult(AppendOutcome.NotFinite, double.NaN, 0);
+        }
         double scaledNorm = Math.ScaleB(norm, -exponent);
-        double remaining = Rank == RowCount ? ProjectOnly(work) : Reduction.Run(directions, Rank, work, scaledNorm, first, second);
+        double remaining = Rank == RowCount ? ProjectOnly(work) : Reduction.Run(directions, Rank, work, scaledNorm, projected, buffers, unit: true);
         bool independent = remaining > Reduction.DependentBelow(Rank) * scaledNorm;
 
         var entries = new double[independent ? Rank + 1 : Rank];
-        for (int i = 0; i < Rank; i++) entries[i] = Math.ScaleB(first[i], exponent);
+        for (int i = 0; i < Rank; i++) entries[i] = Math.ScaleB(projected[i], exponent);
         double newDirection = 0;
         if (independent)
         {
             newDirection = entries[Rank] = Math.ScaleB(remaining, exponent);
-            ColumnSweep.Scale(work, 1 / remaining);
-            directions[Rank++] = work;
+            directions[Rank++] = vector;
         }
         else
         {
-            spare.Push(work);
+            spare.Push(vector);
         }
         coefficients.Add(entries);
         norms.Add(norm);
@@ -148,7 +148,8 @@ public sealed class SecantBasis
     {
         if (r.Length != RowCount) throw new ArgumentException($"{RowCount} entries needed, {r.Length} given", nameof(r));
         if (qtr.Length < Rank) throw new ArgumentException($"room for {Rank} entries needed, {qtr.Length} given", nameof(qtr));
-        double norm = LongVector.Norm(r);
+        if (scratch.Length == 0) scratch = AlignedVector.Allocate(RowCount);
+        double norm = CopyScaled(r, scratch.Span, out int exponent);
         qtr[..Rank].Clear();
         residualNorm = norm;
         if (norm == 0) return;
@@ -158,10 +159,8 @@ public sealed class SecantBasis
             qtr[..Rank].Fill(double.NaN);
             return;
         }
-        if (scratch.Length == 0) scratch = new double[RowCount];
-        int exponent = CopyScaled(r, norm, scratch);
-        residualNorm = Math.ScaleB(Reduction.Run(directions, Rank, scratch, Math.ScaleB(norm, -exponent), first, second), exponent);
-        for (int i = 0; i < Rank; i++) qtr[i] = Math.ScaleB(first[i], exponent);
+        residualNorm = Math.ScaleB(Reduction.Run(directions, Rank, scratch.Span, Math.ScaleB(norm, -exponent), projected, buffers, unit: false), exponent);
+        for (int i = 0; i < Rank; i++) qtr[i] = Math.ScaleB(projected[i], exponent);
     }
 
     /// <summary>Qᵀv alone, one read of Q.</summary>
@@ -178,7 +177,7 @@ public sealed class SecantBasis
         if (oldRank > keptRank)
         {
             var turn = TailRotation.Of(coefficients, norms, start, keptRank, oldRank);
-            if (turn.NewRank > 0) ColumnSweep.Rotate(directions, keptRank, oldRank - keptRank, turn.Matrix, turn.NewRank, RowCount);
+            if (turn.NewRank > 0) ColumnRotation.Run(directions, keptRank, oldRank - keptRank, turn.Matrix, turn.NewRank, RowCount);
             for (int j = start; j < ColumnCount; j++)
             {
                 coefficients[j] = turn.Columns[j - start];
@@ -189,10 +188,10 @@ public sealed class SecantBasis
         }
     }
 
-    private double ProjectOnly(double[] work)
+    private double ProjectOnly(ReadOnlySpan<double> work)
     {
         // The directions already fill the space: what remains is rounding and brings nothing new.
-        ColumnSweep.Dots(directions, Rank, work, first);
+        ColumnSweep.Dots(directions, Rank, work, projected);
         return 0;
     }
 
@@ -201,20 +200,19 @@ public sealed class SecantBasis
         if (Rank < directions.Length) return;
         int size = 2 * directions.Length;
         Array.Resize(ref directions, size);
-        first = new double[size + 1];
-        second = new double[size + 1];
+        projected = new double[size];
     }
 
-    private static int CopyScaled(ReadOnlySpan<double> source, double norm, Span<double> target)
+    /// <summary>Copies a vector, divided by a power of two where its squares would leave the range of a double; returns its own norm.</summary>
+    private static double CopyScaled(ReadOnlySpan<double> source, Span<double> target, out int exponent)
     {
-        // Between these bounds neither squares nor their sums leave the range of a double.
-        if (norm is > 1e-140 and < 1e140)
-        {
-            source.CopyTo(target);
-            return 0;
-        }
-        int exponent = Math.ILogB(norm);
+        exponent = 0;
+        double squares = ColumnSweep.CopyAndSquare(source, target);
+        if (squares is > 1e-280 and < 1e280) return Math.Sqrt(squares);
+        double norm = LongVector.Norm(source);
+        if (norm == 0 || !double.IsFinite(norm)) return norm;
+        exponent = Math.ILogB(norm);
         for (int i = 0; i < source.Length; i++) target[i] = Math.ScaleB(source[i], -exponent);
-        return exponent;
+        return norm;
     }
 }
