@@ -7,9 +7,6 @@ namespace CouplingWatch.Numerics.Matrices;
 /// </summary>
 public sealed class TruncatedSvd
 {
-    /// <summary>The matrices here are small: one thread is quicker than sharing them out, and sums do not depend on how many cores are free.</summary>
-    static TruncatedSvd() => MathNet.Numerics.Control.UseSingleThread();
-
     private TruncatedSvd(SmallMatrix left, double[] kept, SmallMatrix right, double[] all)
     {
         Left = left;
