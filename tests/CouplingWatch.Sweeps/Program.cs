@@ -26,7 +26,7 @@ int Counts()
 
 int Races()
 {
-    var options = args.Contains("--plain") ? RaceOptions.Plain : new RaceOptions();
+    var options = args.Contains("--mended") ? RaceOptions.Mended : RaceOptions.Plain;
     var seed = long.Parse(Option("--seed") ?? "1", CultureInfo.InvariantCulture);
     var jobs = from variant in Chosen() from start in Starts.All select (variant, start);
     var threads = int.Parse(Option("--threads") ?? "1", CultureInfo.InvariantCulture);
@@ -63,7 +63,7 @@ string? Option(string name) => Array.IndexOf(args, name) is var at and >= 0 && a
 int Usage()
 {
     Console.Error.WriteLine("""
-        races  [--tuning | --held] [--only NAME] [--seed N] [--threads N] [--plain] [--each]   races on variants of both samples from eight starting settings
+        races  [--tuning | --held] [--only NAME] [--seed N] [--threads N] [--mended] [--each]   races on variants of both samples from eight starting settings
         rules  [--tuning | --held] [--seeds N] [--set NAME] [--each]                  the same, quicker, for several sets of rules
         counts [--tuning | --held] [--only NAME]                                     iterations of the first 60 steps
         """);

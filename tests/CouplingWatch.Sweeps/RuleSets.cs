@@ -12,10 +12,10 @@ internal static class RuleSets
         ("rests at cap", RaceOptions.Plain with { RestsAtCap = true }),
         ("guard on credit", RaceOptions.Plain with { GuardOnCredit = true }),
         ("fall-back worst round", RaceOptions.Plain with { FallsBackBeyondWorstRound = true }),
-        ("all four", new RaceOptions()),
-        ("later: discard 3", new RaceOptions { DiscardedLater = 3 }),
-        ("later: score 5", new RaceOptions { ScoredLater = 5 }),
-        ("later: discard 3, score 5", new RaceOptions { DiscardedLater = 3, ScoredLater = 5 }),
-        ("later 3/5, win 0.95/0.6", new RaceOptions { DiscardedLater = 3, ScoredLater = 5, WinRatio = 0.95, WinShare = 0.6 }),
+        ("all four", RaceOptions.Mended),
+        ("later: discard 3", RaceOptions.Mended with { DiscardedLater = 3 }),
+        ("later: score 5", RaceOptions.Mended with { ScoredLater = 5 }),
+        ("later: discard 3, score 5", RaceOptions.Mended with { DiscardedLater = 3, ScoredLater = 5 }),
+        ("later 3/5, win 0.95/0.6", RaceOptions.Mended with { DiscardedLater = 3, ScoredLater = 5, WinRatio = 0.95, WinShare = 0.6 }),
     ];
 }

@@ -48,20 +48,23 @@ public sealed record RaceOptions
     /// <summary>Steps to wait for a published revision to be applied before the race gives up; 20.</summary>
     public int Patience { get; init; } = 20;
 
-    /// <summary>A challenger dropped only for its rank, with at least three rounds, may still win when those left do not; true.</summary>
-    public bool RunnersUpMayWin { get; init; } = true;
+    /// <summary>A challenger dropped only for its rank, with at least three rounds, may still win when those left do not; false.</summary>
+    public bool RunnersUpMayWin { get; init; }
 
-    /// <summary>Where arm 0 is at the cap it takes no blocks and counts with the cap; its columns then spoil no challenger's history; true.</summary>
-    public bool RestsAtCap { get; init; } = true;
+    /// <summary>Where arm 0 is at the cap it takes no blocks and counts with the cap; its columns then spoil no challenger's history; false.</summary>
+    public bool RestsAtCap { get; init; }
 
-    /// <summary>A converged step beyond the guard's limit is forgiven when the challenger has saved more than it costs; true.</summary>
-    public bool GuardOnCredit { get; init; } = true;
+    /// <summary>A converged step beyond the guard's limit is forgiven when the challenger has saved more than it costs; false.</summary>
+    public bool GuardOnCredit { get; init; }
 
-    /// <summary>The winner falls back when its mean lies above arm 0's worst round instead of above its mean; true.</summary>
-    public bool FallsBackBeyondWorstRound { get; init; } = true;
+    /// <summary>The winner falls back when its mean lies above arm 0's worst round instead of above its mean; false.</summary>
+    public bool FallsBackBeyondWorstRound { get; init; }
 
-    /// <summary>The first set of rules, without the four mends above; kept for comparison.</summary>
-    public static RaceOptions Plain { get; } = new() { RunnersUpMayWin = false, RestsAtCap = false, GuardOnCredit = false, FallsBackBeyondWorstRound = false };
+    /// <summary>The plain rules, which are the default.</summary>
+    public static RaceOptions Plain { get; } = new();
+
+    /// <summary>With the four mends above. Better on the variants they were made on, not on those never used for that, so they stay off.</summary>
+    public static RaceOptions Mended { get; } = new() { RunnersUpMayWin = true, RestsAtCap = true, GuardOnCredit = true, FallsBackBeyondWorstRound = true };
 
     /// <summary>These options, when every value lies in its range.</summary>
     /// <exception cref="ArgumentOutOfRangeException">Names the value and its range.</exception>
