@@ -1,6 +1,7 @@
 using System.Globalization;
 using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
+using CouplingWatch.Benchmarks.Monitor;
 using CouplingWatch.Benchmarks.Secants;
 using CouplingWatch.Benchmarks.Timing;
 
@@ -11,6 +12,7 @@ CultureInfo.CurrentCulture = CultureInfo.InvariantCulture;
 [
     ("append", AppendBenchmark.Run),
     ("small", SmallMatrixBenchmark.Run),
+    ("monitor", MonitorBenchmark.Run),
 ];
 string filter = args.Length > 0 ? args[0] : "";
 Console.WriteLine($"{RuntimeInformation.ProcessArchitecture}, {Environment.ProcessorCount} processors, .NET {Environment.Version}, {(Vector512.IsHardwareAccelerated ? 512 : 256)}-bit vectors; {ThreadClock.Kind}, smallest of the repetitions.");
