@@ -5,6 +5,7 @@ using CouplingWatch.Records;
 using CouplingWatch.Server.Intake;
 using CouplingWatch.Server.Problems;
 using CouplingWatch.Server.Runs;
+using CouplingWatch.Sketching;
 using CouplingWatch.Wire;
 
 namespace CouplingWatch.Server.Api;
@@ -48,7 +49,7 @@ internal static class ExaminationEndpoint
             if (record.Seq != expected)
                 return Problem.SeqGap.Because(string.Create(CultureInfo.InvariantCulture, $"Line {line.Number}: seq {record.Seq} came where {expected} was expected."), ("line", line.Number), ("member", "seq"), ("expected", expected));
             expected++;
-            monitor.Observe(KeptForm.Of(record, default, [], 0).Record, received);
+            monitor.Observe(VectorRetention.Keep(record), received);
         }
         if (expected == 0) return Problem.Malformed.Because("The recording is empty.", ("line", 1), ("expected", "records, the first of kind open"));
         monitor.EndOfRecording();

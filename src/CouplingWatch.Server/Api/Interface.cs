@@ -16,6 +16,7 @@ internal static class Interface
         api.MapSettings();
         api.MapAdvice();
         api.MapAlerts();
+        api.MapRehearsals();
         api.MapExaminations();
         api.MapFallback((HttpRequest request) => Problem.NoSuchCall.Because($"There is no call {request.Method} {request.Path}.")).ExcludeFromDescription();
         app.MapHealth();

@@ -4,6 +4,7 @@ using CouplingWatch.Monitoring.Journal;
 using CouplingWatch.Server.Live;
 using CouplingWatch.Server.Problems;
 using CouplingWatch.Server.Runs;
+using CouplingWatch.Server.Trials;
 using CouplingWatch.Wire;
 using Microsoft.Extensions.DependencyInjection.Extensions;
 using Microsoft.Extensions.Logging.Console;
@@ -21,7 +22,7 @@ internal static class Services
         services.AddSingleton<ChangeSignals>().AddSingleton<HubWatchers>().AddSingleton<LiveUpdates>().AddSingleton<IWatchFeed, WatchFeed>();
         services.AddSingleton(s => new RunSurroundings(s.GetRequiredService<IJournal>(), s.GetRequiredService<LiveUpdates>(), s.GetRequiredService<MonitorOptions>(),
             s.GetRequiredService<TimeProvider>(), s.GetRequiredService<ILoggerFactory>().CreateLogger<RunHost>()));
-        services.AddSingleton<RunRegistry>();
+        services.AddSingleton<RunRegistry>().AddSingleton<RehearsalDesk>();
         services.AddHostedService<StartChecks>();
         services.AddHosted<HubOutbox>().AddHosted<JournalReplay>().AddHosted<ClockWatch>();
     }

@@ -14,12 +14,16 @@ public sealed record Problem(string Name, int Status, string Title)
     public static readonly Problem UnknownRun = new("unknown-run", 404, "There is no such run.");
     public static readonly Problem UnknownAlert = new("unknown-alert", 404, "There is no such alert.");
     public static readonly Problem UnknownAdvice = new("unknown-advice", 404, "There is no such advice.");
+    public static readonly Problem UnknownRehearsal = new("unknown-rehearsal", 404, "There is no such rehearsal.");
+    public static readonly Problem UnknownRace = new("unknown-race", 404, "There is no such race.");
     public static readonly Problem NotKept = new("not-kept", 404, "Nothing is kept for that step or iteration.");
     public static readonly Problem SeqGap = new("seq-gap", 409, "Records are missing before this one.");
     public static readonly Problem SeqConflict = new("seq-conflict", 409, "Another record was kept under this seq.");
     public static readonly Problem RunExists = new("run-exists", 409, "Another instance has this run name.");
     public static readonly Problem RunClosed = new("run-closed", 409, "The run was closed.");
     public static readonly Problem NotAdjustable = new("not-adjustable", 409, "The run does not take this change.");
+    public static readonly Problem RaceRunning = new("race-running", 409, "A race publishes the settings of this run just now.");
+    public static readonly Problem NoRace = new("no-race", 409, "A race cannot begin.");
     public static readonly Problem AlertClosed = new("alert-closed", 409, "The alert is closed.");
     public static readonly Problem Stale = new("stale-revision", 412, "Another revision came first.");
     public static readonly Problem TooLarge = new("too-large", 413, "The body is larger than the server takes at once.");
@@ -36,8 +40,8 @@ public sealed record Problem(string Name, int Status, string Title)
     /// <summary>Every fault by its name, for the page that explains a type.</summary>
     public static readonly IReadOnlyDictionary<string, Problem> ByName = new[]
     {
-        Malformed, BadQuery, BadRunName, CrossOrigin, NoSuchCall, UnknownRun, UnknownAlert, UnknownAdvice, NotKept, SeqGap, SeqConflict, RunExists, RunClosed,
-        NotAdjustable, AlertClosed, Stale, TooLarge, MediaType, Unconfirmed, OutOfRange, NoMatch, Busy, Internal, JournalDown, NotReady, NoRoom,
+        Malformed, BadQuery, BadRunName, CrossOrigin, NoSuchCall, UnknownRun, UnknownAlert, UnknownAdvice, UnknownRehearsal, UnknownRace, NotKept, SeqGap, SeqConflict, RunExists, RunClosed,
+        NotAdjustable, RaceRunning, NoRace, AlertClosed, Stale, TooLarge, MediaType, Unconfirmed, OutOfRange, NoMatch, Busy, Internal, JournalDown, NotReady, NoRoom,
     }.ToDictionary(p => p.Name, StringComparer.Ordinal);
 
     /// <summary>The answer for one occurrence.</summary>

@@ -1,6 +1,7 @@
 using System.Text.Json;
 using CouplingWatch.Monitoring;
 using CouplingWatch.Monitoring.Journal;
+using CouplingWatch.Monitoring.Rehearsal;
 using CouplingWatch.Ndjson;
 using CouplingWatch.Records;
 using CouplingWatch.Server.Problems;
@@ -81,6 +82,7 @@ internal sealed partial class RunHost
     private IReadOnlyList<Change> Judge(StreamRecord record, DateTimeOffset received)
     {
         signs.Record(record, received);
+        recent.Observe(record);
         if (record is OpenRecord or ResizeRecord or IterationRecord)
             Volatile.Write(ref shape, record is OpenRecord opened ? StreamShape.Of(opened.Fields) : shape?.After(record));
         if (record is OpenRecord first) Open = first;
@@ -112,6 +114,7 @@ internal sealed partial class RunHost
         var fresh = new RunJudge(Run, around.MonitorOptions, log);
         sequence = new RunSequence(Run, around.Journal);
         signs = new SignsOfLife();
+        recent = new RecentSteps(RehearsalTape.MostSteps);
         fallBacks.Clear();
         nextOrder = 0;
         judge = fresh;

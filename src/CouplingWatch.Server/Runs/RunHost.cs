@@ -2,6 +2,7 @@ using System.Text.Json;
 using System.Threading.Channels;
 using CouplingWatch.Monitoring;
 using CouplingWatch.Monitoring.Journal;
+using CouplingWatch.Monitoring.Rehearsal;
 using CouplingWatch.Ndjson;
 using CouplingWatch.Records;
 using CouplingWatch.Server.Problems;
@@ -24,6 +25,7 @@ internal sealed partial class RunHost : IAsyncDisposable
     private readonly Task loop;
     private RunSequence sequence;
     private SignsOfLife signs = new();
+    private RecentSteps recent = new(RehearsalTape.MostSteps);
     private RunJudge? judge;
     private StreamShape? shape;
     private TaskCompletionSource revisionChanged = NewSignal();
@@ -107,6 +109,13 @@ internal sealed partial class RunHost : IAsyncDisposable
         var (serverEvent, answer) = decide(this, judge!.Monitor);
         if (serverEvent is not null) await CommitAsync(serverEvent, cancel);
         return answer;
+    }, cancel);
+
+    /// <summary>From which seq on the latest steps lie whole (null: from the first record), and what was in force there.</summary>
+    public Task<(long? From, IReadOnlyList<StreamRecord> InForce)> RecentStepsAsync(CancellationToken cancel = default) => QueueAsync(async () =>
+    {
+        await LoadAsync(cancel);
+        return (recent.From, recent.From is { } from ? recent.InForceAt(from) : []);
     }, cancel);
 
     /// <summary>Reads the journal now when it was not read yet.</summary>
