@@ -17,6 +17,7 @@ internal static class Interface
         api.MapAdvice();
         api.MapAlerts();
         api.MapRehearsals();
+        api.MapRaces();
         api.MapExaminations();
         api.MapFallback((HttpRequest request) => Problem.NoSuchCall.Because($"There is no call {request.Method} {request.Path}.")).ExcludeFromDescription();
         app.MapHealth();

@@ -19,10 +19,10 @@ internal static class Services
         services.AddSingleton(options);
         services.TryAddSingleton(TimeProvider.System);
         services.TryAddSingleton<MonitorOptions>();
-        services.AddSingleton<ChangeSignals>().AddSingleton<HubWatchers>().AddSingleton<LiveUpdates>().AddSingleton<IWatchFeed, WatchFeed>();
+        services.AddSingleton<ChangeSignals>().AddSingleton<HubWatchers>().AddSingleton<LiveUpdates>().AddSingleton<IWatchFeed, WatchFeed>().AddSingleton<ITrialFeed, TrialFeed>();
         services.AddSingleton(s => new RunSurroundings(s.GetRequiredService<IJournal>(), s.GetRequiredService<LiveUpdates>(), s.GetRequiredService<MonitorOptions>(),
             s.GetRequiredService<TimeProvider>(), s.GetRequiredService<ILoggerFactory>().CreateLogger<RunHost>()));
-        services.AddSingleton<RunRegistry>().AddSingleton<RehearsalDesk>();
+        services.AddSingleton<RunRegistry>().AddSingleton<RehearsalDesk>().AddSingleton<RaceStart>();
         services.AddHostedService<StartChecks>();
         services.AddHosted<HubOutbox>().AddHosted<JournalReplay>().AddHosted<ClockWatch>();
     }

@@ -33,12 +33,17 @@ internal static class SettingsPublisher
     {
         if (run.Open is not { } open) return new(Problem.UnknownRun, $"Run {run.Run} has no records yet.");
         if (run.Closed) return new(Problem.RunClosed, $"Run {run.Run} was closed; nothing reads its settings any more.");
+        if (monitor.Race is { State: RaceState.Waiting or RaceState.Running } race && !IsStop(proposal))
+            return new(Problem.RaceRunning, $"{race.Id} is publishing settings of run {run.Run} in turn; stop it first.", "race", race.Id);
         if (madeFrom is { } from && from != run.Revision)
             return new(Problem.Stale, string.Create(CultureInfo.InvariantCulture, $"The proposal was made from revision {from}, but {run.Revision} is the newest."), "If-Match", $"\"{run.Revision}\"");
         if (proposal.FallbackTo is { } back && (back < 0 || back > run.Revision))
             return new(Problem.Malformed, string.Create(CultureInfo.InvariantCulture, $"There is no revision {back} to fall back to."), "fallbackTo", $"0 to {run.Revision}");
         return Proposals.Refuse(run.Run, proposal, Newest(run, monitor), open.Adjustable);
     }
+
+    /// <summary>Asking a run to stop goes before everything.</summary>
+    private static bool IsStop(SettingsProposal proposal) => proposal.Commands.Any(c => Commands.NameOf(c) == Commands.StopAfterStep) && !SettingValue.Of(proposal.Settings).Any();
 
     /// <summary>The settings that the newest revision stands for; one that the code refused leaves what was applied before.</summary>
     private static CouplingSettings Newest(RunHost run, RunMonitor monitor) =>

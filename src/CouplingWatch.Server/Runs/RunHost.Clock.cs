@@ -36,14 +36,18 @@ internal sealed partial class RunHost
     /// <summary>Who stands in an event that nobody but the clock caused.</summary>
     public const string Clock = "clock";
 
-    /// <summary>A revision made with a way back goes back by itself when a step under it does not converge.</summary>
+    /// <summary>What follows by itself on what was just judged: a way back of a revision, the next turn of a race.</summary>
     private async ValueTask FollowUpAsync()
     {
-        if (stepsToReview.Count == 0) return;
-        var steps = stepsToReview.ToArray();
-        stepsToReview.Clear();
-        var revisions = judge!.Ask<IReadOnlyList<SettingsRevision>>(m => [.. m.Revisions], []);
-        if (Publishing.FallBack.After(steps, revisions, fallBacks, Revision, around.Now()) is { } back)
-            Tell(null, await JournalAndJudgeAsync(back));
+        if (stepsToReview.Count > 0)
+        {
+            var steps = stepsToReview.ToArray();
+            stepsToReview.Clear();
+            var revisions = judge!.Ask<IReadOnlyList<SettingsRevision>>(m => [.. m.Revisions], []);
+            if (Publishing.FallBack.After(steps, revisions, fallBacks, Revision, around.Now()) is { } back) Tell(null, await JournalAndJudgeAsync(back));
+        }
+        // The wish stands until the monitor sees its revision published, so it survives a restart; one is granted a turn.
+        if (!Closed && judge!.Ask(m => m.RaceWish is { } wish && m.Race is { } race ? new { wish, race.Id } : null, null) is { } next)
+            Tell(null, await JournalAndJudgeAsync(new PublishedEvent(Revision + 1, next.wish.Settings, next.wish.Commands, next.Id, next.wish.Reason) { At = around.Now(), Race = next.Id, Arm = next.wish.Arm }));
     }
 }

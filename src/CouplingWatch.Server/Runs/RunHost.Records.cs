@@ -137,6 +137,7 @@ internal sealed partial class RunHost
             // What had to follow on these records followed when they came, and stands in the journal behind them.
             stepsToReview.Clear();
             signs.ListenFrom(around.Now());
+            await FollowUpAsync();
         }
         catch
         {
