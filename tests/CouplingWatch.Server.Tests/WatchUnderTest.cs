@@ -15,16 +15,28 @@ namespace CouplingWatch.Server.Tests;
 /// <summary>A whole server in this process, with a journal and a clock in the hands of the test.</summary>
 internal sealed class WatchUnderTest : IAsyncDisposable
 {
-    private readonly string data;
+    private readonly string? data;
+    private readonly string room;
 
-    private WatchUnderTest(WebApplication app, IJournal journal, FakeTimeProvider time, string data)
+    /// <param name="data">Null for a room in a server of someone else's.</param>
+    private WatchUnderTest(WebApplication app, IJournal journal, FakeTimeProvider time, string? data, string room = "")
     {
         App = app;
         Journal = journal;
         Time = time;
         this.data = data;
-        Http = app.GetTestClient();
+        this.room = room;
+        Http = new HttpClient(new RoomHandler(room, app.GetTestServer().CreateHandler())) { BaseAddress = new Uri("http://localhost/") };
     }
+
+    /// <summary>The same server, with runs of one's own.</summary>
+    public WatchUnderTest Room(string name) => new(App, Journal, Time, null, name);
+
+    /// <summary>What the server said, with the runs called as the test calls them.</summary>
+    public string Plain(string text) => room.Length == 0 ? text : text.Replace(room, "", StringComparison.Ordinal);
+
+    /// <summary>What the server calls a run of this room.</summary>
+    public string NameOf(string run) => room + run;
 
     public static DateTimeOffset Start { get; } = new(2026, 12, 1, 8, 0, 0, TimeSpan.Zero);
 
@@ -95,7 +107,7 @@ internal sealed class WatchUnderTest : IAsyncDisposable
         return problem;
     }
 
-    public bool TryHost(string run, [System.Diagnostics.CodeAnalysis.NotNullWhen(true)] out CouplingWatch.Server.Runs.RunHost? host) => App.Services.GetRequiredService<CouplingWatch.Server.Runs.RunRegistry>().TryFind(run, out host);
+    public bool TryHost(string run, [System.Diagnostics.CodeAnalysis.NotNullWhen(true)] out CouplingWatch.Server.Runs.RunHost? host) => App.Services.GetRequiredService<CouplingWatch.Server.Runs.RunRegistry>().TryFind(NameOf(run), out host);
 
     /// <summary>Asks again until it holds; what it waits for happens on another thread of this process.</summary>
     public async Task UntilAsync(Func<Task<bool>> holds)
@@ -111,6 +123,7 @@ internal sealed class WatchUnderTest : IAsyncDisposable
     public async ValueTask DisposeAsync()
     {
         Http.Dispose();
+        if (data is null) return;
         await App.StopAsync();
         await App.DisposeAsync();
         Directory.Delete(data, recursive: true);

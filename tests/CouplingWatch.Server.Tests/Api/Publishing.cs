@@ -5,7 +5,7 @@ using static CouplingWatch.Server.Tests.WatchUnderTest;
 
 namespace CouplingWatch.Server.Tests.Api;
 
-public class Publishing
+public class Publishing(SharedWatch shared) : IClassFixture<SharedWatch>
 {
     private static CancellationToken Cancel => TestContext.Current.CancellationToken;
 
@@ -189,9 +189,9 @@ public class Publishing
 
     private static object Lower(double threshold = 1e-7) => new { settings = new { filterThreshold = threshold }, reason = "half of the columns are left out" };
 
-    private static async Task<WatchUnderTest> StartedAsync()
+    private async Task<WatchUnderTest> StartedAsync()
     {
-        var watch = await StartAsync();
+        var watch = shared.Room();
         await watch.AcceptAsync("leaf-1", Open(), Instance);
         return watch;
     }

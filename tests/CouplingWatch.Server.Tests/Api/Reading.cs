@@ -3,7 +3,7 @@ using static CouplingWatch.Server.Tests.WatchUnderTest;
 
 namespace CouplingWatch.Server.Tests.Api;
 
-public class Reading
+public class Reading(SharedWatch shared) : IClassFixture<SharedWatch>
 {
     private static CancellationToken Cancel => TestContext.Current.CancellationToken;
 
@@ -18,14 +18,14 @@ public class Reading
     [InlineData("/settings/history")]
     public async Task A_run_that_is_not_there_is_a_problem(string part)
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         await FaultAsync(await watch.Http.GetAsync("/api/runs/nobody" + part, Cancel), 404, "unknown-run");
     }
 
     [Fact]
     public async Task A_call_that_is_not_there_is_a_problem()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         await FaultAsync(await watch.Http.GetAsync("/api/nothing", Cancel), 404, "no-such-call");
     }
 
@@ -73,7 +73,7 @@ public class Reading
     [InlineData("/api/runs/leaf-1/steps?points=many", null)]
     public async Task A_parameter_out_of_its_range_is_named(string address, string? member)
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         await watch.AcceptAsync("leaf-1", Open());
         Assert.Equal(member, (await FaultAsync(await watch.Http.GetAsync(address, Cancel), 400, "bad-query"))["member"]?.GetValue<string>());
     }
@@ -81,7 +81,7 @@ public class Reading
     [Fact]
     public async Task Steps_and_iterations_are_what_was_sent()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         await watch.AcceptAsync("leaf-1", Joined(Steps(6, passes: 3)));
         var steps = (await watch.GetAsync("/api/runs/leaf-1/steps"))["items"]!.AsArray();
         Assert.Equal(6, steps.Count);
@@ -131,7 +131,7 @@ public class Reading
     [Fact]
     public async Task Advice_that_is_not_there_is_neither_adopted_nor_dismissed()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         await watch.AcceptAsync("leaf-1", Open());
         Assert.Empty((await watch.GetAsync("/api/runs/leaf-1/advice"))["items"]!.AsArray());
         await FaultAsync(await watch.Http.PostAsync("/api/runs/leaf-1/advice/none/adopt", Json(new { reason = "r" }), Cancel), 404, "unknown-advice");
@@ -141,7 +141,7 @@ public class Reading
     [Fact]
     public async Task The_interface_describes_itself()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         var paths = (await watch.GetAsync("/openapi/v1.json"))["paths"]!.AsObject();
         foreach (var path in new[] { "/api/runs/{run}/records", "/api/runs", "/api/runs/{run}/settings", "/api/runs/{run}/basis", "/api/alerts", "/api/examinations", "/healthz", "/readyz" })
             Assert.True(paths.ContainsKey(path), path);
@@ -150,7 +150,7 @@ public class Reading
     [Fact]
     public async Task It_is_alive_and_ready()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         Assert.Equal("alive", (await watch.GetAsync("/healthz"))["status"]!.GetValue<string>());
         await watch.UntilAsync(async () => (int)(await watch.Http.GetAsync("/readyz", Cancel)).StatusCode == 200);
     }

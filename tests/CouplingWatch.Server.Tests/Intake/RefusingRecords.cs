@@ -6,7 +6,7 @@ using static CouplingWatch.Server.Tests.WatchUnderTest;
 
 namespace CouplingWatch.Server.Tests.Intake;
 
-public class RefusingRecords
+public class RefusingRecords(SharedWatch shared) : IClassFixture<SharedWatch>
 {
     [Theory]
     [InlineData("not json at all", null)]
@@ -17,7 +17,7 @@ public class RefusingRecords
     [InlineData("""{"kind":"iteration","seq":2,"step":0,"iteration":1,"residuals":{"deflection":1},"vectors":{"residual":"AAAAAAAA8D8=","output":"AAAAAAAA8D8="}}""", "vectors.residual")]
     public async Task A_bad_record_is_named_and_the_good_ones_before_it_are_kept(string bad, string? member)
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         var problem = await FaultAsync(await watch.PostAsync("leaf-1", Open() + Iteration(1, 0, 0) + bad + "\n" + Iteration(3, 0, 2)), 400, "malformed");
         Assert.Equal(3, problem["line"]!.GetValue<int>());
         Assert.Equal(2, problem["next"]!.GetValue<long>());
@@ -29,7 +29,7 @@ public class RefusingRecords
     [Fact]
     public async Task The_length_of_vectors_is_remembered_from_one_post_to_the_next()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         await watch.AcceptAsync("leaf-1", Open());
         var three = Convert.ToBase64String(new byte[24]);
         await watch.AcceptAsync("leaf-1", Iteration(1, 0, 0, more: $",\"vectors\":{{\"residual\":\"{three}\",\"output\":\"{three}\"}}"));
@@ -44,7 +44,7 @@ public class RefusingRecords
     [InlineData("application/cbor-seq")]
     public async Task A_body_of_another_type_is_refused(string type)
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         var content = new StringContent(Open());
         content.Headers.ContentType = new MediaTypeHeaderValue(type);
         await FaultAsync(await watch.Http.PostAsync("/api/runs/leaf-1/records", content, TestContext.Current.CancellationToken), 415, "media-type");
@@ -53,7 +53,7 @@ public class RefusingRecords
     [Fact]
     public async Task A_body_that_says_it_is_longer_than_64_MiB_is_refused_unread()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         var content = RecordsBody(Open());
         content.Headers.ContentLength = 64L * 1024 * 1024 + 1;
         using var request = new HttpRequestMessage(HttpMethod.Post, "/api/runs/leaf-1/records") { Content = content };
@@ -63,7 +63,7 @@ public class RefusingRecords
     [Fact]
     public async Task A_body_that_turns_out_longer_than_64_MiB_is_refused_and_its_good_records_are_kept()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         var pad = new string('x', 8 * 1024 * 1024 - 200);
         using var content = new ChunkedLines([Open(), .. Enumerable.Range(1, 9).Select(i => Remark(i, pad))]);
         content.Headers.ContentType = new MediaTypeHeaderValue("application/x-ndjson");

@@ -6,7 +6,7 @@ using static CouplingWatch.Server.Tests.WatchUnderTest;
 
 namespace CouplingWatch.Server.Tests.Runs;
 
-public class JudgingTheSame
+public class JudgingTheSame(SharedWatch shared) : IClassFixture<SharedWatch>
 {
     private static readonly string[] Views = ["/api/runs/leaf-1", "/api/runs/leaf-1/steps", "/api/runs/leaf-1/iterations", "/api/runs/leaf-1/advice", "/api/runs/leaf-1/settings/history", "/api/alerts?run=leaf-1"];
 
@@ -58,7 +58,7 @@ public class JudgingTheSame
     {
         var lines = (await File.ReadAllLinesAsync(ReferenceData.Path("recordings", name + ".ndjson"), TestContext.Current.CancellationToken)).Select(l => l + "\n").ToList();
         string whole, cut, examined;
-        await using (var watch = await StartAsync())
+        await using (var watch = shared.Room())
         {
             await watch.AcceptAsync("leaf-1", Joined(lines));
             whole = await LookAsync(watch);
@@ -111,9 +111,9 @@ public class JudgingTheSame
         return new System.Text.Json.Nodes.JsonArray([.. alerts]).ToJsonString();
     }
 
-    private static async Task<string> JudgementAsync(IEnumerable<IReadOnlyList<string>> posts)
+    private async Task<string> JudgementAsync(IEnumerable<IReadOnlyList<string>> posts)
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         foreach (var post in posts) await watch.AcceptAsync("leaf-1", Joined(post));
         return await LookAsync(watch);
     }
@@ -123,6 +123,6 @@ public class JudgingTheSame
         List<string> seen = [];
         foreach (var view in Views) seen.Add((await watch.GetAsync(view)).ToJsonString());
         Assert.Contains("\"check\"", seen[^1], StringComparison.Ordinal);
-        return string.Join('\n', seen);
+        return watch.Plain(string.Join('\n', seen));
     }
 }

@@ -3,7 +3,7 @@ using static CouplingWatch.Server.Tests.WatchUnderTest;
 
 namespace CouplingWatch.Server.Tests.Site;
 
-public class ServingTheSite
+public class ServingTheSite(SharedWatch shared) : IClassFixture<SharedWatch>
 {
     private static CancellationToken Cancel => TestContext.Current.CancellationToken;
 
@@ -22,7 +22,7 @@ public class ServingTheSite
     [MemberData(nameof(Assets))]
     public async Task The_files_of_the_site_are_served(string address, string type)
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         using var answer = await watch.Http.GetAsync(address, Cancel);
         Assert.Equal(200, (int)answer.StatusCode);
         Assert.Equal(type, answer.Content.Headers.ContentType?.MediaType);
@@ -31,7 +31,7 @@ public class ServingTheSite
     [Fact]
     public async Task The_chart_library_is_the_one_pinned()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         Assert.Contains("ApexCharts v4.7.0", (await watch.Http.GetStringAsync("/lib/apexcharts/apexcharts.esm.js", Cancel))[..200], StringComparison.Ordinal);
     }
 
@@ -53,7 +53,7 @@ public class ServingTheSite
     [Fact]
     public async Task A_page_allows_no_script_of_its_own_and_nothing_from_elsewhere()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         using var answer = await watch.Http.GetAsync("/", Cancel);
         var policy = Directives(answer.Headers.GetValues("Content-Security-Policy").Single());
         Assert.Equal("'none'", policy["default-src"]);
@@ -68,7 +68,7 @@ public class ServingTheSite
     [Fact]
     public async Task The_page_carries_the_nonce_of_its_own_policy_and_never_the_same_twice()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         var first = await NonceAsync(watch);
         var second = await NonceAsync(watch);
         Assert.NotEqual(first, second);
@@ -77,7 +77,7 @@ public class ServingTheSite
     [Fact]
     public async Task The_page_holds_no_inline_script_and_no_address_of_another_site()
     {
-        await using var watch = await StartAsync();
+        await using var watch = shared.Room();
         var page = await watch.Http.GetStringAsync("/", Cancel);
         Assert.DoesNotMatch("<script(?![^>]*\\ssrc=)[^>]*>", page);
         Assert.DoesNotMatch("(src|href)=\"(https?:)?//", page);
