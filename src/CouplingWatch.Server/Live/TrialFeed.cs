@@ -9,8 +9,8 @@ namespace CouplingWatch.Server.Live;
 /// <summary>Rehearsal and race for the pages of this process.</summary>
 internal sealed class TrialFeed(RunRegistry runs, RehearsalDesk desk, RaceStart races) : ITrialFeed
 {
-    public async Task<RehearsalView?> RehearseAsync(string run, IReadOnlyList<CouplingSettings>? candidates, IProgress<RehearsalProgress>? progress = null, CancellationToken cancel = default) =>
-        runs.TryFind(run, out var host) ? await desk.RehearseAsync(host, candidates, progress is null ? null : new Counted(progress, candidates?.Count), cancel) : null;
+    public async Task<RehearsalView?> RehearseAsync(string run, IReadOnlyList<CouplingSettings>? candidates, IProgress<double>? progress = null, CancellationToken cancel = default) =>
+        runs.TryFind(run, out var host) ? await desk.RehearseAsync(host, candidates, progress, cancel) : null;
 
     public async Task<RaceOutcome> StartRaceAsync(string run, RaceProposal proposal, CancellationToken cancel = default)
     {
@@ -21,10 +21,4 @@ internal sealed class TrialFeed(RunRegistry runs, RehearsalDesk desk, RaceStart 
 
     public async Task<string?> StopRaceAsync(string run, string race, string? reason = null, CancellationToken cancel = default) =>
         runs.TryFind(run, out var host) ? (await races.StopAsync(host, race, WatchFeed.By, reason, cancel))?.Detail : $"There is no run {run}.";
-
-    /// <summary>Turns a share into a count; a search, whose length is not known beforehand, counts in hundredths.</summary>
-    private sealed class Counted(IProgress<RehearsalProgress> progress, int? candidates) : IProgress<double>
-    {
-        public void Report(double value) => progress.Report(new RehearsalProgress((int)Math.Round(value * (candidates ?? 100)), candidates ?? 100));
-    }
 }
