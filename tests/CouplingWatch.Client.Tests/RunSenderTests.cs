@@ -18,7 +18,9 @@ public sealed class RunSenderTests : IAsyncDisposable
 
     private static IterationRecord Iteration(int step, int k, int vector = 0) => new()
     {
-        Step = step, Iteration = k, Residuals = NamedValues.Of(("deflection", Math.Pow(10, -k))),
+        Step = step,
+        Iteration = k,
+        Residuals = NamedValues.Of(("deflection", Math.Pow(10, -k))),
         Vectors = vector == 0 ? null : new VectorPair(new double[vector], new double[vector]),
     };
 

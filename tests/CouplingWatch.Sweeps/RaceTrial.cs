@@ -52,7 +52,14 @@ internal sealed record RaceTrial
         var chosen = ChallengerList.Propose(start.Settings, Starts.Adjustable, noise, most: options.Challengers).Challengers;
         var raced = RacedRun.Raced(variant, start.Settings, before => new GuardedRace(new RaceSetup
         {
-            Id = "race-1", Run = variant.Name, InUse = start.Settings, Seed = seed, Cap = start.Settings.IterationCap, MayDropHistory = true, Challengers = chosen, Before = before,
+            Id = "race-1",
+            Run = variant.Name,
+            InUse = start.Settings,
+            Seed = seed,
+            Cap = start.Settings.IterationCap,
+            MayDropHistory = true,
+            Challengers = chosen,
+            Before = before,
         }, options), options.StepsBefore, StepsAfter);
         if (raced.Race is null) return null;
         var view = raced.Race.View();

@@ -62,8 +62,14 @@ internal sealed class RacedRun : IRunLink
     {
         var plan = new RunPlan
         {
-            Campaign = "sweep", Title = variant.Name, Settings = settings, TimeStep = variant.TimeStep, LaterFactor = variant.LaterFactor, LaterFrom = variant.LaterFrom,
-            Adjustable = Starts.Adjustable, SendVectors = false,
+            Campaign = "sweep",
+            Title = variant.Name,
+            Settings = settings,
+            TimeStep = variant.TimeStep,
+            LaterFactor = variant.LaterFactor,
+            LaterFrom = variant.LaterFrom,
+            Adjustable = Starts.Adjustable,
+            SendVectors = false,
         };
         Next(0);
         Outcome = new CoupledRun(variant.Make(), plan, this, TimeProvider.System).RunAsync(end.Token).GetAwaiter().GetResult();

@@ -30,6 +30,12 @@ internal static class Starts
 
     private static CouplingSettings QuasiNewton(int history, FilterRule rule, double threshold) => new()
     {
-        Method = CouplingMethod.IqnIls, Relaxation = 0.1, HistorySteps = history, FilterRule = rule, FilterThreshold = threshold, IterationCap = 40, PredictorOrder = 1,
+        Method = CouplingMethod.IqnIls,
+        Relaxation = 0.1,
+        HistorySteps = history,
+        FilterRule = rule,
+        FilterThreshold = threshold,
+        IterationCap = 40,
+        PredictorOrder = 1,
     };
 }

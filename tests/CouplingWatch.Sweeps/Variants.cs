@@ -19,13 +19,16 @@ internal static class Variants
 {
     private static readonly GateCase Gate = new()
     {
-        CellsAlong = 40, CellsUp = 20, Elements = 24,
+        CellsAlong = 40,
+        CellsUp = 20,
+        Elements = 24,
         Loads = [new VesselNudge(6e4, 9, 1.2, 0.02, 0.25, 0.4), new Wash(4e3, 12, [1.1, 1.7])],
     };
 
     private static readonly PlateCase Plate = new()
     {
-        ChannelMesh = new LayerMesh(0.03, 0.31e-3, 40, 6), PlateMesh = new LayerMesh(0.03, 4e-3, 40, 8),
+        ChannelMesh = new LayerMesh(0.03, 0.31e-3, 40, 6),
+        PlateMesh = new LayerMesh(0.03, 4e-3, 40, 8),
     };
 
     public static IReadOnlyList<Variant> All { get; } =

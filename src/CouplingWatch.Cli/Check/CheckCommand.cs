@@ -1,8 +1,8 @@
 using System.CommandLine;
 using System.Globalization;
 using CouplingWatch.Monitoring;
-using CouplingWatch.Records;
 using CouplingWatch.Recordings;
+using CouplingWatch.Records;
 
 namespace CouplingWatch.Cli.Check;
 

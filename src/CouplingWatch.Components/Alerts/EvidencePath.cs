@@ -56,8 +56,14 @@ public sealed record EvidencePath
         var what = needs ? "residual ÷ target" : "residual";
         return new EvidencePath
         {
-            Step = iterations[0].Step, Line = line.ToString(), TopLabel = Numbers.TenTo((int)top), BottomLabel = Numbers.TenTo((int)bottom), Axis = what,
-            TargetY = needs ? Y(0) : null, Raised = raised, Last = (X(to), Y(points[^1].Y)),
+            Step = iterations[0].Step,
+            Line = line.ToString(),
+            TopLabel = Numbers.TenTo((int)top),
+            BottomLabel = Numbers.TenTo((int)bottom),
+            Axis = what,
+            TargetY = needs ? Y(0) : null,
+            Raised = raised,
+            Last = (X(to), Y(points[^1].Y)),
             Label = $"{(needs ? "Residual against its target" : "Residual")} in step {Numbers.Count(iterations[0].Step)}: {Numbers.Power(Math.Pow(10, points[0].Y))} at iteration {from}, {Numbers.Power(Math.Pow(10, points[^1].Y))} at iteration {to}",
         };
     }

@@ -39,9 +39,13 @@ public sealed record CampaignRun
         var weight = bars.Sum(b => b.Weight);
         return new CampaignRun
         {
-            Summary = detail.Summary, Settings = detail.Settings, Steps = (int)weight, SinceStep = since,
+            Summary = detail.Summary,
+            Settings = detail.Settings,
+            Steps = (int)weight,
+            SinceStep = since,
             Mean = weight > 0 ? bars.Sum(b => b.Median * b.Weight) / weight : null,
-            Low = Quantile(bars.Select(b => (b.Median, b.Weight)), 0.1), High = Quantile(bars.Select(b => (b.Median, b.Weight)), 0.9),
+            Low = Quantile(bars.Select(b => (b.Median, b.Weight)), 0.1),
+            High = Quantile(bars.Select(b => (b.Median, b.Weight)), 0.9),
             GaveUp = bars.Sum(b => b.Unconverged),
             NodeHoursPerSecond = detail is { Cost.NodeHoursSpent: { } spent, Time: > 0 and var time } ? spent / time : null,
         };

@@ -31,7 +31,9 @@ public sealed record CampaignView
         return new CampaignView
         {
             Runs = [.. runs.OrderBy(r => r.Mean ?? double.PositiveInfinity).ThenBy(r => r.Name, StringComparer.Ordinal)],
-            Best = best, Scheme = scheme, Mixed = runs.Any(r => r.Summary.Scheme != scheme),
+            Best = best,
+            Scheme = scheme,
+            Mixed = runs.Any(r => r.Summary.Scheme != scheme),
             Sentence = best is null ? $"Nothing yet: no run has completed {LeastSteps} steps without giving one up." : $"{Words(best.Settings)}: {Numbers.Fixed(best.Mean)} iterations a step.",
             HowSure = best is null ? "" : Sure(best, same, compared.Count),
         };

@@ -35,8 +35,12 @@ public sealed record ForecastDrawing
         if (after is { } part && part.To <= part.From) after = null;
         return new ForecastDrawing
         {
-            To = band?.From ?? X(ends, now), Band = band, Late = after, Median = Hour(ends, now) <= Hours ? X(ends, now) : null,
-            Beyond = Hour(early, now) > Hours, Post = post,
+            To = band?.From ?? X(ends, now),
+            Band = band,
+            Late = after,
+            Median = Hour(ends, now) <= Hours ? X(ends, now) : null,
+            Beyond = Hour(early, now) > Hours,
+            Post = post,
             Label = $"End of the run in {Span(ends, now)}{(early < late ? $", {Span(early, now)} to {Span(late, now)}" : "")}{Allocation(allocationEndsAt, now)}",
         };
     }

@@ -66,8 +66,15 @@ public sealed class StripDrawing
         line.Append($"H{P(Math.Max(1, bars.Count) * Pitch)}");
         return new StripDrawing(bars)
         {
-            Most = most, Grouped = bars.Any(b => b.ToStep > b.FromStep), Inks = [.. inks.Select(b => b.ToString())], Gave = gave.ToString(),
-            Hollow = hollow.ToString(), Brackets = brackets.ToString(), Whiskers = whiskers.ToString(), Notches = notches.ToString(), BaseLine = line.ToString(),
+            Most = most,
+            Grouped = bars.Any(b => b.ToStep > b.FromStep),
+            Inks = [.. inks.Select(b => b.ToString())],
+            Gave = gave.ToString(),
+            Hollow = hollow.ToString(),
+            Brackets = brackets.ToString(),
+            Whiskers = whiskers.ToString(),
+            Notches = notches.ToString(),
+            BaseLine = line.ToString(),
         };
     }
 

@@ -34,8 +34,13 @@ public static class StripFolding
         }
         return bars[from] with
         {
-            ToStep = bars[to - 1].ToStep, Median = Median(bars, from, to), Worst = worst, MarginDecades = margin, Unconverged = unconverged,
-            Redone = redone, Revision = revision,
+            ToStep = bars[to - 1].ToStep,
+            Median = Median(bars, from, to),
+            Worst = worst,
+            MarginDecades = margin,
+            Unconverged = unconverged,
+            Redone = redone,
+            Revision = revision,
         };
     }
 

@@ -19,20 +19,23 @@ public static class CandidateGrid
         ArgumentNullException.ThrowIfNull(inUse);
         var candidates = new List<CouplingSettings>();
         foreach (var order in Orders)
-        foreach (var history in Histories)
-        foreach (var rule in new[] { FilterRule.OwnNorm, FilterRule.PivotRatio })
-        for (var decade = -8; decade <= -1; decade++)
-        {
-            var threshold = double.Parse($"1e{decade}", System.Globalization.CultureInfo.InvariantCulture);
-            var inHand = inUse.FilterRule == rule && inUse.FilterThreshold <= threshold;
-            if (threshold < AdvisedThreshold.Of(noise, rule) * (1 - 1e-9) && !inHand) continue;
-            var candidate = inUse with
-            {
-                Method = inUse.Method is CouplingMethod.Fixed or CouplingMethod.Aitken or null ? CouplingMethod.IqnIls : inUse.Method,
-                HistorySteps = history, PredictorOrder = order, FilterRule = rule, FilterThreshold = threshold,
-            };
-            if (!Race.SettingsDifference.AreSame(inUse, candidate)) candidates.Add(candidate);
-        }
+            foreach (var history in Histories)
+                foreach (var rule in new[] { FilterRule.OwnNorm, FilterRule.PivotRatio })
+                    for (var decade = -8; decade <= -1; decade++)
+                    {
+                        var threshold = double.Parse($"1e{decade}", System.Globalization.CultureInfo.InvariantCulture);
+                        var inHand = inUse.FilterRule == rule && inUse.FilterThreshold <= threshold;
+                        if (threshold < AdvisedThreshold.Of(noise, rule) * (1 - 1e-9) && !inHand) continue;
+                        var candidate = inUse with
+                        {
+                            Method = inUse.Method is CouplingMethod.Fixed or CouplingMethod.Aitken or null ? CouplingMethod.IqnIls : inUse.Method,
+                            HistorySteps = history,
+                            PredictorOrder = order,
+                            FilterRule = rule,
+                            FilterThreshold = threshold,
+                        };
+                        if (!Race.SettingsDifference.AreSame(inUse, candidate)) candidates.Add(candidate);
+                    }
         return candidates;
     }
 }

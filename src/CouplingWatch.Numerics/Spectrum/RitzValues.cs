@@ -2,6 +2,7 @@ using System.Numerics;
 using CouplingWatch.Numerics.Matrices;
 using CouplingWatch.Numerics.Secants;
 using CouplingWatch.Numerics.Vectors;
+using MathNet.Numerics;
 using MathNet.Numerics.LinearAlgebra.Double;
 
 namespace CouplingWatch.Numerics.Spectrum;
@@ -72,6 +73,7 @@ public sealed class RitzValues
     /// <summary>Ritz values of the newest pairs.</summary>
     /// <param name="d">Changes of the input, in order of arrival (oldest first), vectors of one length. Zero or not finite pairs do not count.</param>
     /// <param name="w">Changes of the output to the same pairs.</param>
+    /// <returns>No values when there is no usable pair, or when the eigenvalue iteration does not converge (seen on contrived streams of wildly graded columns).</returns>
     /// <remarks>Cost about 8·length·60² at most.</remarks>
     /// <exception cref="ArgumentException">Counts or lengths differ.</exception>
     public static RitzValues Of(IReadOnlyList<double[]> d, IReadOnlyList<double[]> w)
@@ -92,8 +94,26 @@ public sealed class RitzValues
         for (int k = 0; k < svd.Rank; k++)
             foreach (ref double entry in small.Column(k)) entry /= svd.Kept[k];
 
-        var eigen = new DenseMatrix(svd.Rank, svd.Rank, small.ToColumnMajor()).Evd();
-        return new RitzValues([.. eigen.EigenValues.OrderBy(v => v.Real).ThenBy(v => v.Imaginary)]);
+        return new RitzValues(EigenValues(small));
+    }
+
+    /// <summary>Eigenvalues by real, then imaginary part; none when an entry is not finite or the iteration for them does not converge.</summary>
+    private static Complex[] EigenValues(SmallMatrix matrix)
+    {
+        double[] entries = matrix.ToColumnMajor();
+        double largest = LongVector.LargestMagnitude(entries);
+        if (!double.IsFinite(largest)) return [];
+        if (largest == 0) return new Complex[matrix.Rows];
+        for (int i = 0; i < entries.Length; i++) entries[i] /= largest;
+        try
+        {
+            var eigen = new DenseMatrix(matrix.Rows, matrix.Columns, entries).Evd();
+            return [.. eigen.EigenValues.Select(v => v * largest).OrderBy(v => v.Real).ThenBy(v => v.Imaginary)];
+        }
+        catch (NonConvergenceException)
+        {
+            return [];
+        }
     }
 
     private static (List<double[]> Inputs, List<double[]> Outputs) Newest(IReadOnlyList<double[]> d, IReadOnlyList<double[]> w)

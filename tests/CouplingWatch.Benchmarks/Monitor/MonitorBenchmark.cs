@@ -78,8 +78,12 @@ internal static class MonitorBenchmark
                 double norm = Math.Sqrt(residual.Sum(v => v * v)), magnitude = Math.Sqrt(output.Sum(v => v * v));
                 var record = new IterationRecord
                 {
-                    Seq = seq++, Step = step, Iteration = k, Residuals = NamedValues.Of(("deflection", norm)),
-                    Magnitudes = NamedValues.Of(("deflection", magnitude)), Vectors = new VectorPair(residual, output),
+                    Seq = seq++,
+                    Step = step,
+                    Iteration = k,
+                    Residuals = NamedValues.Of(("deflection", norm)),
+                    Magnitudes = NamedValues.Of(("deflection", magnitude)),
+                    Vectors = new VectorPair(residual, output),
                 };
                 double start = ThreadClock.Seconds();
                 monitor.Observe(record, Start.AddSeconds(seq));

@@ -44,7 +44,8 @@ internal static class SmallMatrixBenchmark
             basis.Project(r, projection, out double outside);
             FilterOutcome outcome = ColumnFilter.Apply(basis, order, SecantFilter.OwnNorm, 1e-4);
             SecantFit.Solve(outcome, projection, outside, 3);
-        }))[0];
+        }
+        ))[0];
         table.Row("append, project, filter and fit, 4,096 × 40", time.Smallest, "≤ 1 ms");
         Timing.Timing drop = Alternating.Measure(100, (() => Refill(basis, newest), () => basis.RemoveOldest(4)))[0];
         table.Row("drop the four oldest of 40 columns, 4,096 rows", drop.Smallest, "–");

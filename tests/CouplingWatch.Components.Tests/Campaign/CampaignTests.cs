@@ -16,7 +16,10 @@ public sealed class CampaignTests : PageTest
     private static RunDetail Detail(string run, CouplingSettings settings, int[] counts, string campaign = "north-lock", CouplingScheme scheme = CouplingScheme.Serial) => new()
     {
         Summary = HandLock.Learning(Now) with { Run = run, Campaign = campaign, Scheme = scheme, Strip = HandStrip.Of(Now, counts) },
-        RestsOn = "", Settings = settings, Time = 0.2, Cost = new CostView { NodeHoursSpent = 12 },
+        RestsOn = "",
+        Settings = settings,
+        Time = 0.2,
+        Cost = new CostView { NodeHoursSpent = 12 },
     };
 
     private static CampaignRun Run(string run, CouplingSettings settings, params int[] counts) => CampaignRun.Of(Detail(run, settings, counts));

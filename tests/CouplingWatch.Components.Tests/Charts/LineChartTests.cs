@@ -18,7 +18,9 @@ public class LineChartTests : BunitContext
 
     private static LineChartSpec Spec(int points) => new()
     {
-        X = NiceAxis.Counts(points), Y = NiceAxis.Decades([0, 4]), Series = [new(SeriesRole.Path, [.. Enumerable.Range(0, points).Select(i => new ChartPoint(i, i, Text: $"iteration {i}"))])],
+        X = NiceAxis.Counts(points),
+        Y = NiceAxis.Decades([0, 4]),
+        Series = [new(SeriesRole.Path, [.. Enumerable.Range(0, points).Select(i => new ChartPoint(i, i, Text: $"iteration {i}"))])],
     };
 
     private IRenderedComponent<LineChart> Chart(int points) => Render<LineChart>(p => p.Add(c => c.Spec, Spec(points)).Add(c => c.Label, "Residual in words").Add(c => c.Of, "iterations"));

@@ -17,16 +17,24 @@ public static class HandAlerts
         "its basis is starved: the newest column was left out of each of the last five updates.",
         new JsonObject { ["kept"] = 5, ["columns"] = 49, ["threshold"] = 1e-2, ["rule"] = "pivot-ratio", ["uncovered"] = 0.33 }) with
     {
-        State = AlertState.Acknowledged, AcknowledgedBy = "night shift", AcknowledgedAt = now.AddMinutes(-72), LastStep = 16, LastSeq = 171, Advice = ["a-threshold"],
+        State = AlertState.Acknowledged,
+        AcknowledgedBy = "night shift",
+        AcknowledgedAt = now.AddMinutes(-72),
+        LastStep = 16,
+        LastSeq = 171,
+        Advice = ["a-threshold"],
     };
 
     public static Alert SlowBecauseStarved(DateTimeOffset now) => Of("leaf80-3", "slow", Severity.Warning, 16, 12, 164, now.AddMinutes(-20),
-        "step 16 falls too slowly to meet its target before the cap of 40.", new JsonObject { ["fallingShare"] = 1.0, ["improvement"] = 0.21 }) with { Cause = "leaf80-3/starved/9" };
+        "step 16 falls too slowly to meet its target before the cap of 40.", new JsonObject { ["fallingShare"] = 1.0, ["improvement"] = 0.21 }) with
+    { Cause = "leaf80-3/starved/9" };
 
     public static Alert Unequal(DateTimeOffset now) => Of("plate-7", "unequal-fields", Severity.Note, 10, 12, 140, now.AddMinutes(-190),
         "the deflection arrives 3.5 iterations after the wall temperature, in every step.", new JsonObject { ["medianLateness"] = 3.5, ["limit"] = 2.5 }) with
     {
-        State = AlertState.Acknowledged, AcknowledgedBy = "day shift", AcknowledgedAt = now.AddMinutes(-188),
+        State = AlertState.Acknowledged,
+        AcknowledgedBy = "day shift",
+        AcknowledgedAt = now.AddMinutes(-188),
     };
 
     public static Alert Unconverged(DateTimeOffset now) => Of("leaf60-4", "unconverged-run", Severity.Critical, 31, 39, 240, now.AddMinutes(-33),
@@ -45,8 +53,18 @@ public static class HandAlerts
 
     public static Alert Of(string run, string check, Severity severity, int step, int iteration, long seq, DateTimeOffset raised, string text, JsonObject evidence) => new()
     {
-        Id = $"{run}/{check}/{seq}", Run = run, Check = check, Severity = severity, RaisedAt = raised, Step = step, Iteration = iteration, Seq = seq, LastSeq = seq,
-        LastStep = step, Text = text, Evidence = evidence,
+        Id = $"{run}/{check}/{seq}",
+        Run = run,
+        Check = check,
+        Severity = severity,
+        RaisedAt = raised,
+        Step = step,
+        Iteration = iteration,
+        Seq = seq,
+        LastSeq = seq,
+        LastStep = step,
+        Text = text,
+        Evidence = evidence,
     };
 
     private static JsonArray Array(params double[] values) => [.. values.Select(v => (JsonNode)v)];

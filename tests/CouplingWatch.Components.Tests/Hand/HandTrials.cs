@@ -42,7 +42,9 @@ public sealed class HandTrials : ITrialFeed
         ];
         return new RehearsalView
         {
-            Calibration = new RehearsalCalibration(12, 11.2, 11.0, 0.018, true, null), Candidates = candidates, Proposal = candidates[0],
+            Calibration = new RehearsalCalibration(12, 11.2, 11.0, 0.018, true, null),
+            Candidates = candidates,
+            Proposal = candidates[0],
             Caveat = "Replayed from recorded passes: not valid once load, contact or time step differ from the recording.",
         };
     }
@@ -50,7 +52,8 @@ public sealed class HandTrials : ITrialFeed
     /// <summary>A rehearsal that declines.</summary>
     public static RehearsalView Declined() => new()
     {
-        Calibration = new RehearsalCalibration(12, 8.2, 13.9, 0.53, false, "the recording cannot be reproduced (replayed 13.9, recorded 8.2)"), Caveat = "",
+        Calibration = new RehearsalCalibration(12, 8.2, 13.9, 0.53, false, "the recording cannot be reproduced (replayed 13.9, recorded 8.2)"),
+        Caveat = "",
     };
 
     /// <summary>A race in its third round: one challenger out by the guard, two still in.</summary>
@@ -59,7 +62,17 @@ public sealed class HandTrials : ITrialFeed
         var inUse = HandDetails.Settings(FilterRule.PivotRatio, 1e-2);
         RaceArm Arm(int arm, string name, CouplingSettings settings, string state, double? mean, string? why = null, int? round = null) => new()
         {
-            Arm = arm, Name = name, Settings = settings, Origin = arm == 0 ? "in-use" : "rule", State = state, Mean = mean, Difference = arm == 0 ? null : mean - 11.1, OutWhy = why, OutRound = round, Rounds = state == "out" ? 1 : 2, StepsRun = 8,
+            Arm = arm,
+            Name = name,
+            Settings = settings,
+            Origin = arm == 0 ? "in-use" : "rule",
+            State = state,
+            Mean = mean,
+            Difference = arm == 0 ? null : mean - 11.1,
+            OutWhy = why,
+            OutRound = round,
+            Rounds = state == "out" ? 1 : 2,
+            StepsRun = 8,
         };
         var steps = new List<RaceStepView>();
         var step = 16;
@@ -67,7 +80,16 @@ public sealed class HandTrials : ITrialFeed
             for (var i = 0; i < 4; i++) steps.Add(new RaceStepView(step++, arm, level + (i + arm) % 3, true, arm == 2 && i > 0 ? "cost" : i == 0 ? "discarded" : "scored", round));
         return new RaceView
         {
-            Id = "race-1", Run = run, State = RaceState.Running, By = "day shift", Seed = 4, Text = "round 3 of 5: own-norm 10⁻⁴ has its turn; 2 challengers are in", FirstStep = 16, RoundsPlanned = 5, ArmInForce = 1, ArmInTurn = 1,
+            Id = "race-1",
+            Run = run,
+            State = RaceState.Running,
+            By = "day shift",
+            Seed = 4,
+            Text = "round 3 of 5: own-norm 10⁻⁴ has its turn; 2 challengers are in",
+            FirstStep = 16,
+            RoundsPlanned = 5,
+            ArmInForce = 1,
+            ArmInTurn = 1,
             Arms =
             [
                 Arm(0, "in use", inUse, "in", 11.1), Arm(1, "own-norm 10⁻⁴", inUse with { FilterRule = FilterRule.OwnNorm, FilterThreshold = 1e-4 }, "in", 4.2),
@@ -78,7 +100,9 @@ public sealed class HandTrials : ITrialFeed
                 new RaceRound(1, [0, 1, 2, 3], [new(0, 11.0, 17, 19), new(1, 4.3, 21, 23), new(2, 17.3, 25, 27), new(3, 5.7, 29, 31)]),
                 new RaceRound(2, [3, 0, 1], [new(3, 5.1, 33, 35), new(0, 11.2, 37, 39), new(1, 4.1, 41, 43)]), new RaceRound(3, [1, 3, 0], []),
             ],
-            Steps = steps, Guard = new RaceGuard(16.5, 11, 11.1, 40, false), Cost = new RaceCost(-58.4, 0, -8600),
+            Steps = steps,
+            Guard = new RaceGuard(16.5, 11, 11.1, 40, false),
+            Cost = new RaceCost(-58.4, 0, -8600),
             Log = [new(16, "start", "4 arms, seed 4"), new(25, "out", "a step took 18 iterations, more than the guard allows (16.5)", 2), new(32, "round", "round 1 is complete")],
         };
     }
@@ -86,7 +110,10 @@ public sealed class HandTrials : ITrialFeed
     /// <summary>The same race decided: the first challenger is published and watched.</summary>
     public static RaceView Decided(string run = "leaf80-3") => Running(run) with
     {
-        State = RaceState.Watching, Text = "own-norm 10⁻⁴ has won and is watched for 10 steps", ArmInTurn = null, ArmInForce = 1,
+        State = RaceState.Watching,
+        Text = "own-norm 10⁻⁴ has won and is watched for 10 steps",
+        ArmInTurn = null,
+        ArmInForce = 1,
         Arms = [.. Running(run).Arms.Select(a => a.Arm == 1 ? a with { State = "winner" } : a.Arm == 3 ? a with { State = "out", OutWhy = "not among the better half after round 3", OutRound = 3 } : a)],
         Verdict = new RaceVerdict("publish", "own-norm 10⁻⁴ takes 7.0 iterations a step fewer and was published with automatic fall-back", 1, new RaceEffect(1, -7.0, -7.3, -6.7, 0.9375, 5, 3), "watching"),
     };

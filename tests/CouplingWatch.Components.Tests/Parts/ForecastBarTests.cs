@@ -62,6 +62,9 @@ public sealed class ForecastBarTests : PageTest
 
     private static RunForecast Ends(double hours, double early, double late) => new()
     {
-        Ends = Now.AddHours(hours), EndsEarly = Now.AddHours(early), EndsLate = Now.AddHours(late), Text = "",
+        Ends = Now.AddHours(hours),
+        EndsEarly = Now.AddHours(early),
+        EndsLate = Now.AddHours(late),
+        Text = "",
     };
 }

@@ -1,5 +1,5 @@
-using CsCheck;
 using CouplingWatch.Numerics.Secants;
+using CsCheck;
 
 namespace CouplingWatch.Coupling.Tests.QuasiNewton;
 

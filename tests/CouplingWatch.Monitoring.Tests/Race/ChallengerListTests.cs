@@ -11,7 +11,12 @@ public sealed class ChallengerListTests
     {
         Ranges = new Dictionary<string, NumberRange>
         {
-            ["relaxation"] = new(0.01, 1), ["historySteps"] = new(0, 40), ["filterThreshold"] = new(1e-12, 0.1), ["predictorOrder"] = new(0, 2), ["iterationCap"] = new(5, 100), ["tolerance"] = new(1e-9, 1e-3),
+            ["relaxation"] = new(0.01, 1),
+            ["historySteps"] = new(0, 40),
+            ["filterThreshold"] = new(1e-12, 0.1),
+            ["predictorOrder"] = new(0, 2),
+            ["iterationCap"] = new(5, 100),
+            ["tolerance"] = new(1e-9, 1e-3),
         },
         Choices = new Dictionary<string, IReadOnlyList<string>> { ["filterRule"] = ["own-norm", "pivot-ratio"], ["method"] = ["fixed", "aitken", "iqn-ils"] },
         Commands = ["dropHistory"],
@@ -19,7 +24,13 @@ public sealed class ChallengerListTests
 
     private static CouplingSettings QuasiNewton(int history, FilterRule rule, double threshold) => new()
     {
-        Method = CouplingMethod.IqnIls, Relaxation = 0.1, HistorySteps = history, FilterRule = rule, FilterThreshold = threshold, IterationCap = 40, PredictorOrder = 1,
+        Method = CouplingMethod.IqnIls,
+        Relaxation = 0.1,
+        HistorySteps = history,
+        FilterRule = rule,
+        FilterThreshold = threshold,
+        IterationCap = 40,
+        PredictorOrder = 1,
     };
 
     private static string[] Names(CouplingSettings inUse, double? noise, AdjustableSettings? adjustable = null, IReadOnlyList<RaceChallenger>? first = null) =>

@@ -9,7 +9,13 @@ internal sealed class RaceTrack
 {
     public static readonly CouplingSettings InUse = new()
     {
-        Method = CouplingMethod.IqnIls, Relaxation = 0.1, HistorySteps = 4, FilterRule = FilterRule.PivotRatio, FilterThreshold = 1e-2, IterationCap = 40, PredictorOrder = 1,
+        Method = CouplingMethod.IqnIls,
+        Relaxation = 0.1,
+        HistorySteps = 4,
+        FilterRule = FilterRule.PivotRatio,
+        FilterThreshold = 1e-2,
+        IterationCap = 40,
+        PredictorOrder = 1,
     };
 
     public static CouplingSettings History(int steps) => InUse with { HistorySteps = steps };
@@ -36,7 +42,13 @@ internal sealed class RaceTrack
         Options = options;
         Setup = new RaceSetup
         {
-            Id = "race-1", Run = "leaf-1", InUse = InUse, Seed = seed, Cap = 40, MayDropHistory = mayDropHistory, ScoreBy = scoreBy,
+            Id = "race-1",
+            Run = "leaf-1",
+            InUse = InUse,
+            Seed = seed,
+            Cap = 40,
+            MayDropHistory = mayDropHistory,
+            ScoreBy = scoreBy,
             Challengers = [.. (against ?? [.. Enumerable.Range(0, challengers).Select(i => History(5 + i))]).Select(s => new RaceChallenger(s, "rule"))],
             Before = [.. Enumerable.Range(0, before).Select(_ => play(step++, InUse))],
         };

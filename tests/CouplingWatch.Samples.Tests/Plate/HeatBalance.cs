@@ -1,8 +1,8 @@
-using CoupledRuns;
 using ColdPlate.Cases;
 using ColdPlate.Coupling;
 using ColdPlate.Layers;
 using ColdPlate.Plate;
+using CoupledRuns;
 using CouplingWatch.Samples.Tests.Runs;
 
 namespace CouplingWatch.Samples.Tests.Plate;

@@ -51,8 +51,15 @@ internal static class RecordGen
         Gen.Select(Maybe(AnyOf<CouplingMethod>()), Maybe(Number), Maybe(Gen.Int[0, 50]), Maybe(AnyOf<FilterRule>()), Maybe(Positive), Maybe(Gen.Int[1, 100]), Gen.Select(Maybe(Positive), MaybeRef(Text), Gen.Bool))
             .Select((method, relaxation, history, rule, threshold, cap, rest) => new CouplingSettings
             {
-                Method = method, Relaxation = relaxation, HistorySteps = history, FilterRule = rule, FilterThreshold = threshold, IterationCap = cap,
-                PredictorOrder = history % 3, Tolerance = rest.Item1, Surrogate = rest.Item2,
+                Method = method,
+                Relaxation = relaxation,
+                HistorySteps = history,
+                FilterRule = rule,
+                FilterThreshold = threshold,
+                IterationCap = cap,
+                PredictorOrder = history % 3,
+                Tolerance = rest.Item1,
+                Surrogate = rest.Item2,
                 Own = rest.Item3 ? new JsonObject { ["damping"] = 0.25, ["list"] = new JsonArray(1, "two") } : null,
             });
 
@@ -60,7 +67,17 @@ internal static class RecordGen
         Gen.Select(MaybeRef(Text), Maybe(Gen.Int[1, 1000]), AnyOf<FieldRole>(), MaybeRef(Name), Maybe(Positive), AnyOf<FieldNorm>(), AnyOf<ToleranceReference>())
             .Select((unit, size, role, group, weight, norm, reference) => new FieldDeclaration
             {
-                Name = "", Unit = unit, Size = size, Role = role, Group = group, From = group, Weight = weight, Norm = norm, RelativeTo = reference, Relative = weight, Absolute = weight / 2,
+                Name = "",
+                Unit = unit,
+                Size = size,
+                Role = role,
+                Group = group,
+                From = group,
+                Weight = weight,
+                Norm = norm,
+                RelativeTo = reference,
+                Relative = weight,
+                Absolute = weight / 2,
             });
 
     private static readonly Gen<IReadOnlyList<FieldDeclaration>> Fields =
@@ -78,9 +95,20 @@ internal static class RecordGen
         Gen.Select(MaybeRef(Text), AnyOf<CouplingScheme>(), AnyOf<Stepping>(), Fields, Settings, Adjustable, Gen.Select(Maybe(Positive), Maybe(Time), MaybeRef(Text)))
             .Select((text, scheme, stepping, fields, settings, adjustable, rest) => (StreamRecord)new OpenRecord
             {
-                Instance = text, Campaign = rest.Item3, Title = text, Scheme = scheme, Stepping = stepping, Fields = fields, Settings = settings, Adjustable = adjustable,
+                Instance = text,
+                Campaign = rest.Item3,
+                Title = text,
+                Scheme = scheme,
+                Stepping = stepping,
+                Fields = fields,
+                Settings = settings,
+                Adjustable = adjustable,
                 Solvers = text is null ? [] : [new SolverDeclaration("water", rest.Item1, null), new SolverDeclaration("leaf")],
-                TimeStep = rest.Item1, EndTime = rest.Item1, AllocationEndsAt = rest.Item2, Nodes = rest.Item1, BeatSeconds = rest.Item1,
+                TimeStep = rest.Item1,
+                EndTime = rest.Item1,
+                AllocationEndsAt = rest.Item2,
+                Nodes = rest.Item1,
+                BeatSeconds = rest.Item1,
                 Continues = text is null ? null : new Continuation("leaf80-1", 400, rest.Item3),
                 Provenance = text is null ? new Dictionary<string, string>() : new Dictionary<string, string> { ["mesh"] = text },
                 Labels = text is null ? new Dictionary<string, string>() : new Dictionary<string, string> { ["thickness_mm"] = "80" },
@@ -90,8 +118,22 @@ internal static class RecordGen
         Gen.Select(Named(Norm), MaybeRef(Named(Norm)), MaybeRef(Named(Number)), Maybe(Number), Worst, Group, Gen.Select(Count, Count, Maybe(Gen.Int[0, 3]), Gen.Bool, MaybeRef(Group), MaybeRef(Named(Gen.OneOf(0.0, 1.0)))))
             .Select((residuals, magnitudes, seconds, number, worst, data, rest) => (StreamRecord)new IterationRecord
             {
-                Step = rest.Item1, Iteration = rest.Item2, Attempt = rest.Item3, Residuals = residuals, Magnitudes = magnitudes, Targets = magnitudes, Met = rest.Item6, Seconds = seconds,
-                Time = number, TimeStep = number, PassSeconds = number, Relaxation = number, Worst = worst, Vectors = data.Vectors, Sketch = data.Sketch, Basis = data.Basis,
+                Step = rest.Item1,
+                Iteration = rest.Item2,
+                Attempt = rest.Item3,
+                Residuals = residuals,
+                Magnitudes = magnitudes,
+                Targets = magnitudes,
+                Met = rest.Item6,
+                Seconds = seconds,
+                Time = number,
+                TimeStep = number,
+                PassSeconds = number,
+                Relaxation = number,
+                Worst = worst,
+                Vectors = data.Vectors,
+                Sketch = data.Sketch,
+                Basis = data.Basis,
                 Surrogate = rest.Item4 ? new SurrogateReport(rest.Item1, number, null) : null,
                 Groups = rest.Item5 is { } group ? new Dictionary<string, GroupData> { ["gate"] = group, ["valve"] = data } : null,
             });

@@ -10,7 +10,10 @@ public sealed class VectorRetentionTests
 {
     private static IterationRecord Iteration(int length) => new()
     {
-        Seq = 4, Step = 0, Iteration = 2, Residuals = NamedValues.Of(("a", 3)),
+        Seq = 4,
+        Step = 0,
+        Iteration = 2,
+        Residuals = NamedValues.Of(("a", 3)),
         Vectors = new VectorPair([.. Enumerable.Range(0, length).Select(i => Math.Sin(i))], [.. Enumerable.Range(0, length).Select(i => Math.Cos(i))]),
     };
 

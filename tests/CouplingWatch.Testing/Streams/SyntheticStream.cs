@@ -71,9 +71,15 @@ public sealed record SyntheticStream
 
     public OpenRecord Open() => new()
     {
-        Seq = 0, At = Start, Instance = "synthetic", Campaign = "north-lock", Title = "synthetic",
+        Seq = 0,
+        At = Start,
+        Instance = "synthetic",
+        Campaign = "north-lock",
+        Title = "synthetic",
         Fields = [new FieldDeclaration { Name = "deflection", Unit = "m", Absolute = Target, RelativeTo = ToleranceReference.None }],
-        Settings = new CouplingSettings { Method = CouplingMethod.IqnIls, Relaxation = 0.1, IterationCap = Cap }, TimeStep = 0.01, EndTime = 0.01 * Steps,
+        Settings = new CouplingSettings { Method = CouplingMethod.IqnIls, Relaxation = 0.1, IterationCap = Cap },
+        TimeStep = 0.01,
+        EndTime = 0.01 * Steps,
     };
 
     /// <summary>The stream from open to close.</summary>
