@@ -74,6 +74,7 @@ internal sealed partial class RunHost
         catch
         {
             judge = null;
+            loaded = false;
             throw;
         }
         nextOrder += entries.Count;
@@ -138,10 +139,12 @@ internal sealed partial class RunHost
             stepsToReview.Clear();
             signs.ListenFrom(around.Now());
             await FollowUpAsync();
+            loaded = true;
         }
         catch
         {
             judge = null;
+            loaded = false;
             throw;
         }
     }

@@ -27,6 +27,7 @@ internal sealed partial class RunHost : IAsyncDisposable
     private SignsOfLife signs = new();
     private RecentSteps recent = new(RehearsalTape.MostSteps);
     private RunJudge? judge;
+    private volatile bool loaded;
     private StreamShape? shape;
     private TaskCompletionSource revisionChanged = NewSignal();
     private readonly Dictionary<int, int> fallBacks = [];
@@ -118,8 +119,8 @@ internal sealed partial class RunHost : IAsyncDisposable
         return (recent.From, recent.From is { } from ? recent.InForceAt(from) : []);
     }, cancel);
 
-    /// <summary>Reads the journal now when it was not read yet.</summary>
-    public Task EnsureLoadedAsync(CancellationToken cancel = default) => QueueAsync(async () =>
+    /// <summary>Reads the journal now when it was not read yet; done at once when it was, without waiting behind posts that are being written down.</summary>
+    public Task EnsureLoadedAsync(CancellationToken cancel = default) => loaded ? Task.CompletedTask : QueueAsync(async () =>
     {
         await LoadAsync(cancel);
         return true;

