@@ -4,11 +4,11 @@ using CouplingWatch.Wire;
 namespace CouplingWatch.Monitoring.Views;
 
 /// <summary>All steps of the run in bounded memory: the newest one by one, older ones in groups of 8, 64, … that keep their extremes.</summary>
-/// <remarks>Each level holds at most <see cref="Capacity"/> entries; when it is full its oldest <see cref="Fold"/> become one entry of the next level. A million steps take about 16,000 entries.</remarks>
+/// <remarks>Each level holds at most <see cref="Capacity"/> entries; when it is full its oldest <see cref="Fold"/> become one entry of the next level. A million steps take about 2,500 entries.</remarks>
 internal sealed class StepPyramid : IRunListener
 {
     public const int Fold = 8;
-    public const int Capacity = 4096;
+    public const int Capacity = 512;
 
     private readonly List<Queue<StripBar>> levels = [new()];
     private int redone;
